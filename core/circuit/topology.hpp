@@ -1,0 +1,18 @@
+#pragma once
+/// Faults of a drawing that no number can mend, found by graph search before anything is solved.
+#include "core/circuit/circuit.hpp"
+
+namespace sinewright {
+
+struct TieEdge {
+    Tie how;
+    int a, b; ///< unknown indices, −1 gnd
+    int part; ///< index into Design::parts
+};
+
+/// Unconnected terminals; nets that reach nothing else; nets without a DC path to gnd; loops of ideal sources;
+/// structurally singular equations (maximum matching on the pattern of G and the elements).
+/// Sentences name part and terminal, net, or both sources, e.g. "V1 and V2 force different voltages on the same net."
+Faults topology_faults(const Design& design, const Circuit& circuit, const std::vector<TieEdge>& ties);
+
+} // namespace sinewright

@@ -1,0 +1,44 @@
+#pragma once
+/// Runs the analyses of a document off the UI thread; the newest edit wins; results arrive by queued signal.
+#include "core/review/findings.hpp"
+#include <QObject>
+#include <memory>
+
+namespace sinewright::ui {
+
+class Document;
+
+/// One set of results as shown: the findings and the curves drawn from them.
+struct Shown {
+    quint64 revision = 0;                     ///< of the document they belong to
+    std::shared_ptr<const Design> design;     ///< the snapshot they were computed from
+    Findings findings;
+    LoopCurve curve;                          ///< empty when there is no loop gain; about 600 points
+};
+using ShownPtr = std::shared_ptr<const Shown>;
+
+class Analyst : public QObject {
+    Q_OBJECT
+  public:
+    explicit Analyst(Document& document, QObject* parent = nullptr);
+    ~Analyst() override; ///< stops and joins the worker
+
+    ShownPtr latest() const { return latest_; } ///< may be of an older revision; null before the first
+    bool current() const;                       ///< latest() belongs to the document's present revision
+    bool working() const;
+    /// Waits (spinning the event loop) until current(), at most `limit_ms`; for pictures and tests.
+    bool wait_until_current(int limit_ms);
+
+  signals:
+    void shown();           ///< latest() is new
+    void became_stale();    ///< the document changed; latest() is older than it
+    void stale_for_long();  ///< 100 ms have passed without new results: grey the values
+
+  private:
+    struct Worker;
+    std::unique_ptr<Worker> worker_;
+    Document& document_;
+    ShownPtr latest_;
+};
+
+} // namespace sinewright::ui
