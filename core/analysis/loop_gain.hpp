@@ -7,8 +7,8 @@ namespace sinewright {
 
 struct Crossing {
     double frequency_hz = 0;
-    double gain = 0;    ///< L there, real and positive
-    bool falls = true;  ///< arg L falls through 0 (else it rises)
+    double gain = 0;   ///< L there, real and positive
+    bool falls = true; ///< arg L falls through 0 (else it rises)
     double startup_margin_db() const;
 };
 
@@ -22,37 +22,50 @@ struct LoopCurve {
 /// With M the opened circuit's pencil and x, y its two sides, D_c = det of the joined circuit (v_x = v_y) and
 /// D_a = det with the sides joined in opposition (v_x = −v_y): L = (D_a − D_c)/(D_a + D_c), because
 /// D_c ∝ y11+y12+y21+y22 and D_a ∝ y11−y12−y21+y22. Both determinants are products over their roots, so a sweep costs
-/// O(n) a point; a few points are checked against LU of the opened circuit, and the sweep falls back to LU when they
-/// differ by more than 1e-9.
+/// O(n) a point; a few points are checked against LU of the opened circuit, and everything falls back to LU when they
+/// differ by more than 1e-9. Where |L| is so small that the difference loses digits, LU is used as well.
 /// Source: return difference, Bode 1945; bilateral double injection, Tian, Visvanathan, Hantgan & Kundert 2001.
 class LoopGain {
   public:
     /// @param opened  linearised opened circuit (n+1); x and y the indices of its two sides.
-    /// @error no_loop_gain when y11 + y22 vanishes at every frequency (all forward gain inside an ideal op-amp).
+    /// @error no_loop_gain when y11 + y22 vanishes at every frequency (all forward gain inside an ideal op-amp);
+    ///        singular_pencil when the joined circuit has no solution at any frequency.
     static Result<LoopGain> prepare(const Pencil& opened, int x, int y);
 
-    Complex at(Complex s) const;                     ///< fast form
-    Complex at_by_lu(Complex s) const;               ///< plain form: LU of the opened circuit
-    LoopCurve sweep(double from_hz, double to_hz, int points) const; ///< log-spaced, both ends included
+    Complex at(Complex s) const;       ///< fast form, s in rad/s
+    Complex at_by_lu(Complex s) const; ///< plain form: LU of the opened circuit
     LoopCurve at(std::vector<double> frequencies_hz) const;
-    const std::vector<Complex>& natural_frequencies() const { return closed_roots_; } ///< right-most first
+    LoopCurve sweep(double from_hz, double to_hz, int points) const; ///< log-spaced, both ends included; 0 < from < to
+    /// d ln(D_a/D_c)/ds, from the roots.
+    Complex slope_of_log_ratio(Complex s) const;
+    /// Roots of D_c (natural frequencies of the joined circuit) and of D_a, rad/s.
+    std::vector<Complex> joined_roots() const;
+    std::vector<Complex> opposed_roots() const;
     bool falls_back_to_lu() const { return falls_back_; }
-    std::vector<Crossing> crossings() const;         ///< all f > 0 with L real and positive, rising in frequency
-    /// Clockwise-counted encirclements of +1 by L(jω), −∞ < ω < ∞, from accumulated phase of 1 − L.
-    int encirclements_by_phase() const;
-    /// Right-half-plane roots of the opened circuit's characteristic polynomial (poles of L); nothing when it cannot be formed.
+    /// Right-half-plane roots of the opened circuit's characteristic polynomial (poles of L); nothing when it can't be
+    /// formed.
     std::optional<int> opened_right_half_plane() const;
 
   private:
     LoopGain() = default;
-    Pencil opened_;
+    Complex ratio(Complex s) const;
+    Pencil scaled_; ///< opened circuit, equilibrated
     int x_ = -1, y_ = -1;
-    double load_siemens_ = 1;              ///< termination used by the plain form
-    std::vector<Complex> closed_roots_, opposed_roots_;
-    double log_ratio_ = 0;                 ///< log |k| of D_a/D_c = k Π(s − a)/Π(s − c)
-    int ratio_sign_ = 1;
+    double w0_rad_per_s_ = 1;
+    std::vector<Complex> joined_roots_, opposed_roots_; ///< in units of w0
+    double log_scale_ = 0; ///< ln of k and its sign in D_a/D_c = k Π(s − a)/Π(s − c), roots in units of w0
+    double scale_sign_ = 1;
     bool falls_back_ = false;
 };
+
+/// All f > 0 where L(jω) is real and positive, rising in frequency. Crossings with |L| below 1e-9 are not quoted.
+/// Found on a grid refined round every root, then refined to 1e-13 by LU of the unreduced circuit.
+std::vector<Crossing> find_crossings(const LoopGain& loop_gain);
+
+/// Clockwise encirclements of +1 by L(jω), −∞ < ω < ∞, poles on the axis passed on their right: accumulated phase of
+/// 1 − L. Equals right-half-plane natural frequencies less right-half-plane poles of L (Nyquist 1932). Nothing when the
+/// curve runs through +1 itself.
+std::optional<int> count_encirclements(const LoopGain& loop_gain);
 
 struct BarkhausenPoint {
     double frequency_hz = 0, gain = 0, startup_margin_db = 0;
@@ -61,14 +74,14 @@ struct BarkhausenPoint {
 
 struct LoopFinding {
     Cut cut;
-    bool cut_chosen = false;    ///< the file named none
-    std::string cut_reason;     ///< why this one, in words
+    bool cut_chosen = false; ///< the file named none
+    std::string cut_reason;  ///< why this one, in words
     std::optional<BarkhausenPoint> barkhausen;
     std::string barkhausen_reason; ///< why there is none
     std::vector<Crossing> crossings;
-    std::optional<int> encirclements;    ///< of +1
-    std::string encirclement_note;       ///< a disagreement of the counts, in words; empty when they agree
-    std::string sweep_note;              ///< how the sweep was computed when not by the fast form
+    std::optional<int> encirclements; ///< clockwise, of +1
+    std::string encirclement_note;    ///< a disagreement of the counts, in words; empty when they agree
+    std::string sweep_note;           ///< how the sweep was computed when not by the fast form
 };
 
 /// Governing Barkhausen point by the contract: nearest in log frequency to Im of the right-most complex pair, within a
@@ -77,7 +90,8 @@ std::optional<BarkhausenPoint> governing_point(const std::vector<Crossing>& cros
                                                std::string& reason);
 
 /// Candidate cuts of a design in order of preference, with the reason for the first.
-/// Prefers a terminal that draws little current, with a finite loop gain and a governing Barkhausen point falling through 0.
+/// Prefers a terminal that draws little current, with a finite loop gain and a governing Barkhausen point falling
+/// through 0.
 struct CutChoice {
     Cut cut;
     std::string reason;

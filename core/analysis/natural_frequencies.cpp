@@ -1,0 +1,114 @@
+#include "core/analysis/natural_frequencies.hpp"
+#include "core/analysis/pencil_reduction.hpp"
+#include <Eigen/LU>
+#include <algorithm>
+#include <cmath>
+#include <numbers>
+
+namespace sinewright {
+
+namespace {
+
+/// A complex pair whose real part is below this part of its size is on the axis: it grows by less than 1e-8 a cycle.
+constexpr double on_axis = 1e-10;
+/// A real root this small against the largest one is zero to rounding.
+constexpr double zero_root = 1e-13;
+
+/// The unknown that takes the largest part in a solution of (G + sC)x = 0 that exists for every s.
+int undetermined_unknown(const Pencil& equilibrated) {
+    const Eigen::FullPivLU<Matrix> lu(equilibrated.G + 0.8125 * equilibrated.C);
+    int index = 0;
+    lu.kernel().col(0).cwiseAbs().maxCoeff(&index);
+    return index;
+}
+
+Fault singular(const Pencil& equilibrated, std::span<const std::string> names) {
+    const int k = undetermined_unknown(equilibrated);
+    const std::string name = k < static_cast<int>(names.size()) ? names[k] : "unknown " + std::to_string(k + 1);
+    return Fault{FaultKind::singular_pencil, name, "No equation determines " + name + ", at any frequency.",
+                 "Check what drives it: two ideal op-amps may act on the same loop, or none on this one."};
+}
+
+/// The first root of each conjugate pair or real root to polish: right-most root and right-most pair.
+void polish_leading(const Pencil& equilibrated, std::vector<Complex>& roots) {
+    sort_right_most_first(roots);
+    const auto polish = [&](std::size_t k) {
+        roots[k] = polish_root(equilibrated, roots[k]);
+        if (roots[k].imag() != 0 && k + 1 < roots.size()) roots[k + 1] = std::conj(roots[k]);
+    };
+    if (roots.empty()) return;
+    polish(0);
+    if (roots[0].imag() != 0) return;
+    const auto pair = std::find_if(roots.begin(), roots.end(), [](Complex s) { return s.imag() > 0; });
+    if (pair != roots.end()) polish(static_cast<std::size_t>(pair - roots.begin()));
+}
+
+} // namespace
+
+Result<std::vector<Complex>> natural_frequencies(const Pencil& pencil, std::span<const std::string> names) {
+    if (pencil.size() == 0) return std::vector<Complex>{};
+    double w0 = 0;
+    for (int attempt = 0;; ++attempt) {
+        Pencil scaled = pencil;
+        const PencilScaling scaling = equilibrate(scaled, w0);
+        auto roots = finite_roots(scaled);
+        if (!roots) return singular(scaled, names);
+        polish_leading(scaled, *roots);
+        sort_right_most_first(*roots);
+        // Once more on the scale of the pair that matters, where the first guess of that scale was far off.
+        const auto pair = std::find_if(roots->begin(), roots->end(), [](Complex s) { return s.imag() > 0; });
+        const double size = pair == roots->end() ? 1 : std::abs(*pair);
+        if (attempt == 0 && (size > 1e3 || size < 1e-3)) {
+            w0 = size * scaling.w0_rad_per_s;
+            continue;
+        }
+        for (Complex& s : *roots) s *= scaling.w0_rad_per_s;
+        return *roots;
+    }
+}
+
+SmallSignal judge_start(std::vector<Complex> roots) {
+    SmallSignal found;
+    double largest = 0;
+    for (const Complex s : roots) largest = std::max(largest, std::abs(s));
+    const auto pair = std::find_if(roots.begin(), roots.end(), [](Complex s) { return s.imag() > 0; });
+    for (const Complex s : roots) {
+        const bool real = s.imag() == 0;
+        if (s.real() <= (real ? zero_root * largest : on_axis * std::abs(s))) continue;
+        ++found.right_half_plane;
+        found.right_half_plane_real += real;
+    }
+    if (found.right_half_plane_real % 2 == 1)
+        found.outcome = Outcome::latches;
+    else if (found.right_half_plane > 0)
+        found.outcome = Outcome::starts;
+    else
+        found.outcome = Outcome::decays;
+
+    const bool overdriven = found.outcome == Outcome::starts && found.right_half_plane == found.right_half_plane_real;
+    if (pair != roots.end()) {
+        found.growth_per_s = pair->real();
+        found.growth_per_cycle = std::expm1(2 * std::numbers::pi * pair->real() / pair->imag());
+        found.frequency_hz = pair->imag() / (2 * std::numbers::pi);
+    } else if (!roots.empty()) {
+        found.growth_per_s = roots.front().real();
+    }
+    if (found.outcome == Outcome::latches) {
+        found.frequency_hz.reset();
+        found.growth_per_cycle.reset();
+        found.growth_per_s = roots.front().real();
+        found.frequency_reason = "It latches: positive feedback wins at DC, so nothing oscillates.";
+    } else if (overdriven) {
+        found.frequency_hz.reset();
+        found.growth_per_cycle.reset();
+        found.growth_per_s = roots.front().real();
+        found.frequency_reason = "It starts, but so overdriven that growth is not oscillatory.";
+    } else if (pair == roots.end()) {
+        found.frequency_reason = roots.empty() ? "The circuit has no natural frequency: nothing in it stores energy."
+                                               : "All natural frequencies are real: nothing in it rings.";
+    }
+    found.natural_frequencies = std::move(roots);
+    return found;
+}
+
+} // namespace sinewright
