@@ -103,11 +103,13 @@ Complex LoopGain::ratio(Complex s) const {
     return scale_sign_ * std::exp(log_scale_) * product_over_roots(s / w0_rad_per_s_, opposed_roots_, joined_roots_);
 }
 
-Result<LoopGain> LoopGain::prepare(const Pencil& opened, int x, int y) {
+Result<LoopGain> LoopGain::prepare(const Pencil& opened, int x, int y) { return prepare_at_scale(opened, x, y, 0); }
+
+Result<LoopGain> LoopGain::prepare_at_scale(const Pencil& opened, int x, int y, double w0_rad_per_s) {
     LoopGain loop;
     loop.x_ = x, loop.y_ = y;
     loop.scaled_ = opened;
-    loop.w0_rad_per_s_ = equilibrate(loop.scaled_, 0, x, y).w0_rad_per_s;
+    loop.w0_rad_per_s_ = equilibrate(loop.scaled_, w0_rad_per_s, x, y).w0_rad_per_s;
 
     const std::array<Complex, 4> probes{Complex(0, 1.37), Complex(0, 0.0721), Complex(0, 31.3), Complex(0.43, 2.9)};
     const bool none = std::all_of(probes.begin(), probes.end(), [&](Complex s) {
@@ -124,6 +126,8 @@ Result<LoopGain> LoopGain::prepare(const Pencil& opened, int x, int y) {
     if (!joined_roots)
         return Fault{FaultKind::singular_pencil, "", "The circuit has no solution at any frequency.",
                      "Look for a net that nothing drives."};
+    const double scale = scale_of_interest(*joined_roots);
+    if (w0_rad_per_s == 0 && poor_scale(scale)) return prepare_at_scale(opened, x, y, scale * loop.w0_rad_per_s_);
     auto opposed_roots = finite_roots(opposed);
     loop.falls_back_ = !opposed_roots.has_value();
     loop.joined_roots_ = std::move(*joined_roots);

@@ -48,6 +48,7 @@ class LoopGain {
 
   private:
     LoopGain() = default;
+    static Result<LoopGain> prepare_at_scale(const Pencil& opened, int x, int y, double w0_rad_per_s);
     Complex ratio(Complex s) const;
     Pencil scaled_; ///< opened circuit, equilibrated
     int x_ = -1, y_ = -1;

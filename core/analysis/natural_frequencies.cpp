@@ -56,9 +56,8 @@ Result<std::vector<Complex>> natural_frequencies(const Pencil& pencil, std::span
         polish_leading(scaled, *roots);
         sort_right_most_first(*roots);
         // Once more on the scale of the pair that matters, where the first guess of that scale was far off.
-        const auto pair = std::find_if(roots->begin(), roots->end(), [](Complex s) { return s.imag() > 0; });
-        const double size = pair == roots->end() ? 1 : std::abs(*pair);
-        if (attempt == 0 && (size > 1e3 || size < 1e-3)) {
+        const double size = scale_of_interest(*roots);
+        if (attempt == 0 && poor_scale(size)) {
             w0 = size * scaling.w0_rad_per_s;
             continue;
         }

@@ -6,16 +6,16 @@
 namespace sinewright {
 
 struct OperatingPointOptions {
-    int max_iterations = 100;         ///< Newton steps per continuation stage
+    int max_iterations = 100;          ///< Newton steps per continuation stage
     double relative_tolerance = 1e-12; ///< last step against each unknown's size
-    int max_states = 5;               ///< how many DC states to look for
+    int max_states = 5;                ///< how many DC states to look for
 };
 
 struct OperatingPoint {
-    Vector x;           ///< closed circuit's unknowns
-    int iterations = 0; ///< Newton steps in all
+    Vector x;            ///< closed circuit's unknowns
+    int iterations = 0;  ///< Newton steps in all
     double residual = 0; ///< largest |f| scaled by each row's size
-    std::string method; ///< "Newton", "source stepping", "conductance stepping", "pseudo-transient"
+    std::string method;  ///< "Newton", "source stepping", "conductance stepping", "pseudo-transient"
     /// Further DC states, where the loop can latch; x is the one nearest power-up (all sources rising from zero).
     std::vector<Vector> others;
 };

@@ -13,15 +13,21 @@ namespace {
 /// far above rounding (1e-16 a step), far below the ratio of the smallest to the largest useful capacitor in one row.
 constexpr double dependent_column = 1e-12;
 
-double middle_rate(const Pencil& pencil) {
-    std::vector<double> rates;
-    for (int k = 0; k < pencil.size(); ++k) {
-        const double g = pencil.G.row(k).cwiseAbs().maxCoeff(), c = pencil.C.row(k).cwiseAbs().maxCoeff();
-        if (g > 0 && c > 0) rates.push_back(g / c);
-    }
-    if (rates.empty()) return 1;
+double middle(std::vector<double>& rates) {
     std::nth_element(rates.begin(), rates.begin() + rates.size() / 2, rates.end());
     return rates[rates.size() / 2];
+}
+
+/// Middle of |G|/|C| over the diagonal (a net's own R and C), else over rows.
+double middle_rate(const Pencil& pencil) {
+    std::vector<double> own, by_row;
+    for (int k = 0; k < pencil.size(); ++k) {
+        if (pencil.G(k, k) != 0 && pencil.C(k, k) != 0) own.push_back(std::abs(pencil.G(k, k) / pencil.C(k, k)));
+        const double g = pencil.G.row(k).cwiseAbs().maxCoeff(), c = pencil.C.row(k).cwiseAbs().maxCoeff();
+        if (g > 0 && c > 0) by_row.push_back(g / c);
+    }
+    if (!own.empty()) return middle(own);
+    return by_row.empty() ? 1 : middle(by_row);
 }
 
 double power_of_two(double x) { return std::exp2(std::round(std::log2(x))); }
@@ -129,6 +135,13 @@ Complex polish_root(const Pencil& equilibrated, Complex root) {
         if (size <= 1e-15 * std::abs(s)) break;
     }
     return root.imag() == 0 ? Complex(s.real(), 0) : s;
+}
+
+double scale_of_interest(const std::vector<Complex>& roots) {
+    const Complex* best = nullptr;
+    for (const Complex& s : roots)
+        if (s.imag() > 0 && (!best || s.real() > best->real())) best = &s;
+    return best ? std::abs(*best) : 1;
 }
 
 void sort_right_most_first(std::vector<Complex>& roots) {

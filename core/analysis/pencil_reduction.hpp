@@ -32,6 +32,11 @@ std::optional<Pencil> without_infinite_roots(Pencil pencil);
 /// eigenvalue iteration does not converge.
 std::optional<std::vector<Complex>> finite_roots(const Pencil& equilibrated);
 
+/// Size of the right-most complex root in units of w0; 1 when all are real. Far from 1, w0 was a poor guess: roots keep
+/// their digits best when those of interest are near w0.
+double scale_of_interest(const std::vector<Complex>& roots);
+constexpr bool poor_scale(double scale) { return scale > 30 || scale < 1 / 30.0; }
+
 /// One root of the equilibrated pencil improved by inverse iteration on the full, unreduced equations (each entry keeps
 /// its own relative accuracy there). Returns the start when that does not contract.
 Complex polish_root(const Pencil& equilibrated, Complex root);
