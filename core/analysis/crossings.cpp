@@ -11,7 +11,11 @@ namespace {
 constexpr double two_pi = 2 * std::numbers::pi;
 constexpr double quoted_gain = 1e-9; ///< crossings below −180 dB are rounding, not physics
 constexpr double zero_phase = 1e-10; ///< |arg L| below this is zero to rounding
-constexpr double largest_turn = 0.7; ///< rad of arg between neighbouring grid points before the interval is halved
+/// While searching, the fast form serves down to |L| ≈ 1e-8, where its phase is still good to 1e-6; quoted crossings
+/// are refined by LU.
+constexpr double search_difference = 1e-8;
+constexpr double fast_form_noise = 1e-13; ///< absolute error of L in the fast form, with room
+constexpr double largest_turn = 0.7;      ///< rad of arg between neighbouring grid points before the interval is halved
 
 struct Point {
     double w_rad_per_s;
@@ -55,7 +59,7 @@ double turn(Complex from, Complex to) { return std::arg(to * std::conj(from)); }
 /// Evaluates on the grid and halves every interval in which `seen(L)` turns by more than `largest_turn`.
 template <class Seen> std::vector<Point> trace(const LoopGain& loop, const std::vector<double>& grid, Seen seen) {
     std::vector<Point> points;
-    const auto point = [&](double w) { return Point{w, loop.at(Complex(0, w))}; };
+    const auto point = [&](double w) { return Point{w, loop.at(Complex(0, w), search_difference)}; };
     const auto add = [&](auto&& self, const Point& next, int depth) -> void {
         const Point& last = points.back();
         if (depth > 0 && std::abs(turn(seen(last.gain), seen(next.gain))) > largest_turn) {
@@ -134,7 +138,8 @@ std::vector<Crossing> find_crossings(const LoopGain& loop) {
     const std::vector<Point> traced = trace(loop, search_grid(loop), [](Complex gain) { return gain; });
     std::vector<Point> points;
     for (std::size_t k = 0; k < traced.size(); ++k) {
-        if (std::abs(traced[k].gain) < quoted_gain || std::abs(std::arg(traced[k].gain)) < zero_phase) continue;
+        const double size = std::abs(traced[k].gain);
+        if (size < quoted_gain || std::abs(std::arg(traced[k].gain)) < zero_phase + fast_form_noise / size) continue;
         if (!points.empty() && !loop.falls_back_to_lu()) add_hidden_extremum(loop, points.back(), traced[k], points);
         points.push_back(traced[k]);
     }

@@ -15,9 +15,6 @@ constexpr double two_pi = 2 * std::numbers::pi;
 
 /// Fast and plain form may differ by this much, relative to |L| (methods: "fall back when they differ by 1e-9").
 constexpr double fast_form_tolerance = 1e-9;
-/// |D_a/D_c − 1| ≈ 2|L| below which that difference has lost so many digits that the plain form is taken: the ratio is
-/// good to some 1e-14, so this leaves 1e-10 of L.
-constexpr double small_difference = 1e-4;
 /// y11 + y22 is nothing but rounding below this part of the terms it is the difference of.
 constexpr double no_admittance = 1e-12;
 
@@ -148,10 +145,10 @@ Result<LoopGain> LoopGain::prepare_at_scale(const Pencil& opened, int x, int y, 
     return loop;
 }
 
-Complex LoopGain::at(Complex s) const {
+Complex LoopGain::at(Complex s, double smallest_difference) const {
     if (falls_back_) return at_by_lu(s);
     const Complex r = ratio(s), difference = r - 1.0, sum = r + 1.0;
-    if (std::abs(difference) < small_difference) return at_by_lu(s);
+    if (std::abs(difference) < smallest_difference) return at_by_lu(s);
     return difference * std::conj(sum) / std::norm(sum);
 }
 

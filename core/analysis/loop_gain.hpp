@@ -32,7 +32,11 @@ class LoopGain {
     ///        singular_pencil when the joined circuit has no solution at any frequency.
     static Result<LoopGain> prepare(const Pencil& opened, int x, int y);
 
-    Complex at(Complex s) const;       ///< fast form, s in rad/s
+    /// |D_a/D_c − 1| ≈ 2|L| below which that difference has lost so many digits that the plain form is taken: the ratio
+    /// is good to some 1e-14, so this leaves 1e-10 of L.
+    static constexpr double small_difference = 1e-4;
+    /// Fast form, s in rad/s. A smaller `smallest_difference` trades digits of a small L for speed.
+    Complex at(Complex s, double smallest_difference = small_difference) const;
     Complex at_by_lu(Complex s) const; ///< plain form: LU of the opened circuit
     LoopCurve at(std::vector<double> frequencies_hz) const;
     LoopCurve sweep(double from_hz, double to_hz, int points) const; ///< log-spaced, both ends included; 0 < from < to
