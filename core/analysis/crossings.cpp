@@ -81,36 +81,47 @@ template <class Seen> std::vector<Point> trace(const LoopGain& loop, const std::
     return points;
 }
 
-/// Root of arg L between a and b, where it has opposite signs: bisection safeguarding secant steps (Brent's idea), by
-/// LU.
-Crossing refine(const LoopGain& loop, double a, double b, bool falls) {
-    const auto phase = [&](double w) { return std::arg(loop.at_by_lu(Complex(0, w))); };
-    double fa = phase(a), fb = phase(b), w = a;
-    double best = std::abs(fa) < std::abs(fb) ? a : b;
-    if (fa * fb < 0) {
-        for (int step = 0; step < 60 && std::abs(b - a) > 1e-14 * b; ++step) {
-            w = a - fa * (b - a) / (fb - fa);
-            if (step % 3 == 2 || !(w > std::min(a, b) && w < std::max(a, b))) w = 0.5 * (a + b);
-            const double fw = phase(w);
-            best = w;
-            if (fw == 0) break;
-            if (fw * fa < 0) {
-                b = w, fb = fw;
-                fa *= 0.5; // Illinois: keeps the other end from sticking
-            } else {
-                a = w, fa = fw;
-                fb *= 0.5;
-            }
-        }
-    }
-    return {best / two_pi, loop.at_by_lu(Complex(0, best)).real(), falls};
-}
-
 double phase_slope(const LoopGain& loop, const Point& p) {
     // L = (r − 1)/(r + 1): dL/dr = 2/(r + 1)², r = (1 + L)/(1 − L), so d ln L/ds = 2r/(r² − 1) · d ln r/ds
     // = (1 − L²)/(2L) · d ln r/ds.
     const Complex by_s = (1.0 - p.gain * p.gain) / (2.0 * p.gain) * loop.slope_of_log_ratio(Complex(0, p.w_rad_per_s));
     return (by_s * Complex(0, 1)).imag();
+}
+
+/// Root of arg L between a and b, where it has opposite signs: bisection mixed with regula falsi, until the bracket is
+/// `width` of its place.
+template <class Phase> double bracketed_root(Phase phase, double a, double b, double width) {
+    double fa = phase(a), fb = phase(b);
+    for (int step = 0; step < 80 && b - a > width * b && fa * fb < 0; ++step) {
+        double w = a - fa * (b - a) / (fb - fa);
+        if (step % 2 == 1 || !(w > a && w < b)) w = 0.5 * (a + b);
+        const double fw = phase(w);
+        if (fw * fa < 0)
+            b = w, fb = fw;
+        else
+            a = w, fa = fw;
+    }
+    return std::abs(fa) < std::abs(fb) ? a : b;
+}
+
+/// The fast form brings the crossing within reach; a few Newton steps by LU, whose phase has no lost digits, end it.
+Crossing refine(const LoopGain& loop, double a, double b, bool falls) {
+    const auto plain = [&](double w) { return std::arg(loop.at_by_lu(Complex(0, w))); };
+    double w = 0;
+    if (loop.falls_back_to_lu()) {
+        w = bracketed_root(plain, a, b, 1e-15);
+    } else {
+        w = bracketed_root([&](double v) { return std::arg(loop.at(Complex(0, v), search_difference)); }, a, b, 1e-9);
+        double last_step = b - a;
+        for (int step = 0; step < 6; ++step) {
+            const Complex gain = loop.at_by_lu(Complex(0, w));
+            const double change = std::arg(gain) / phase_slope(loop, {w, gain});
+            if (!(std::abs(change) < last_step)) break;
+            w -= change, last_step = std::abs(change);
+            if (last_step < 1e-15 * w) break;
+        }
+    }
+    return {w / two_pi, loop.at_by_lu(Complex(0, w)).real(), falls};
 }
 
 /// Between two points of equal phase sign the phase may still touch or pass zero twice: finds its extremum if it turns
