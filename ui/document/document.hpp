@@ -9,6 +9,9 @@
 
 namespace sinewright::ui {
 
+/// Faults as people read them: one sentence with its remedy a line.
+QString sentences(const Faults& faults);
+
 class Document : public QObject {
     Q_OBJECT
   public:
@@ -25,24 +28,32 @@ class Document : public QObject {
     void edit(const QString& name, const std::function<void(Design&)>& change, const QString& merge_key = {});
     void end_merge();
     QUndoStack& history() { return history_; }
+    void undo();
+    void redo();
+    QString undo_text() const; ///< "Undo move R3"; "Undo" when there is nothing to undo
+    QString redo_text() const;
 
     const QStringList& selection() const { return selection_; } ///< part references
-    void select(const QStringList& refs);
+    void select(const QStringList& refs);                       ///< references that exist not are dropped
 
-    QString path() const { return path_; }  ///< empty: never saved
+    QString path() const { return path_; } ///< empty: never saved
     bool modified() const { return !history_.isClean(); }
-    void set_new(Design design = {});       ///< a new unsaved design; clears the history
-    bool open(const QString& path, QString* message);    ///< false: message says why; the present design stays
-    bool save(const QString& path, QString* message);    ///< atomic; false: message says why, nothing lost
+    void set_new(Design design = {}); ///< a new unsaved design; clears the history
+    /// False: `message` says why and the present design stays. True: `message` holds what was mended on reading, if
+    /// any.
+    bool open(const QString& path, QString* message);
+    bool save(const QString& path, QString* message); ///< atomic; false: message says why, nothing is lost
 
   signals:
-    void changed();           ///< the design changed (any cause)
+    void changed(); ///< the design changed (any cause)
     void selection_changed();
-    void file_changed();      ///< path or modified state
+    void file_changed(); ///< path or modified state
+    void replaced();     ///< another design altogether: new or opened
 
   private:
     friend class DesignStep;
     void replace(std::shared_ptr<const Design> design);
+    void start_over(Design design, const QString& path);
     std::shared_ptr<const Design> design_;
     QUndoStack history_;
     QStringList selection_;
