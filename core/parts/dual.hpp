@@ -12,11 +12,24 @@ template <int N> struct Dual {
     Dual() = default;
     Dual(double value) : v(value) {}
 
-    Dual& operator+=(const Dual& b) { v += b.v; for (int k = 0; k < N; ++k) d[k] += b.d[k]; return *this; }
-    Dual& operator-=(const Dual& b) { v -= b.v; for (int k = 0; k < N; ++k) d[k] -= b.d[k]; return *this; }
-    Dual& operator*=(const Dual& b) { for (int k = 0; k < N; ++k) d[k] = d[k] * b.v + v * b.d[k]; v *= b.v; return *this; }
+    Dual& operator+=(const Dual& b) {
+        v += b.v;
+        for (int k = 0; k < N; ++k) d[k] += b.d[k];
+        return *this;
+    }
+    Dual& operator-=(const Dual& b) {
+        v -= b.v;
+        for (int k = 0; k < N; ++k) d[k] -= b.d[k];
+        return *this;
+    }
+    Dual& operator*=(const Dual& b) {
+        for (int k = 0; k < N; ++k) d[k] = d[k] * b.v + v * b.d[k];
+        v *= b.v;
+        return *this;
+    }
     Dual& operator/=(const Dual& b) {
-        const double r = 1 / b.v; v *= r;
+        const double r = 1 / b.v;
+        v *= r;
         for (int k = 0; k < N; ++k) d[k] = (d[k] - v * b.d[k]) * r;
         return *this;
     }
@@ -24,7 +37,11 @@ template <int N> struct Dual {
     friend Dual operator-(Dual a, const Dual& b) { return a -= b; }
     friend Dual operator*(Dual a, const Dual& b) { return a *= b; }
     friend Dual operator/(Dual a, const Dual& b) { return a /= b; }
-    friend Dual operator-(Dual a) { a.v = -a.v; for (double& x : a.d) x = -x; return a; }
+    friend Dual operator-(Dual a) {
+        a.v = -a.v;
+        for (double& x : a.d) x = -x;
+        return a;
+    }
     friend bool operator<(const Dual& a, const Dual& b) { return a.v < b.v; }
     friend bool operator>(const Dual& a, const Dual& b) { return a.v > b.v; }
     friend bool operator<=(const Dual& a, const Dual& b) { return a.v <= b.v; }
@@ -37,11 +54,22 @@ template <int N> Dual<N> chain(const Dual<N>& a, double f, double slope) {
     for (int k = 0; k < N; ++k) y.d[k] = slope * a.d[k];
     return y;
 }
-template <int N> Dual<N> exp(const Dual<N>& a) { const double e = std::exp(a.v); return chain(a, e, e); }
+template <int N> Dual<N> exp(const Dual<N>& a) {
+    const double e = std::exp(a.v);
+    return chain(a, e, e);
+}
 template <int N> Dual<N> log(const Dual<N>& a) { return chain(a, std::log(a.v), 1 / a.v); }
-template <int N> Dual<N> tanh(const Dual<N>& a) { const double t = std::tanh(a.v); return chain(a, t, 1 - t * t); }
-template <int N> Dual<N> sqrt(const Dual<N>& a) { const double r = std::sqrt(a.v); return chain(a, r, 0.5 / r); }
-template <int N> Dual<N> pow(const Dual<N>& a, double p) { return chain(a, std::pow(a.v, p), p * std::pow(a.v, p - 1)); }
+template <int N> Dual<N> tanh(const Dual<N>& a) {
+    const double t = std::tanh(a.v);
+    return chain(a, t, 1 - t * t);
+}
+template <int N> Dual<N> sqrt(const Dual<N>& a) {
+    const double r = std::sqrt(a.v);
+    return chain(a, r, 0.5 / r);
+}
+template <int N> Dual<N> pow(const Dual<N>& a, double p) {
+    return chain(a, std::pow(a.v, p), p * std::pow(a.v, p - 1));
+}
 inline double value_of(double x) { return x; }
 template <int N> double value_of(const Dual<N>& x) { return x.v; }
 

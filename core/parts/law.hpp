@@ -29,14 +29,17 @@ class Law {
     /// Pure: no state, no allocation. Every entry asked for is written.
     virtual void evaluate(const LawSamples& samples) const = 0;
     /// Voltage over which control c changes the output e-fold (n·kT/q of a junction); 0: no step limiting needed.
-    virtual double limiting_scale_v(int control) const { (void)control; return 0; }
+    virtual double limiting_scale_v(int control) const {
+        (void)control;
+        return 0;
+    }
 };
 using LawPtr = std::shared_ptr<const Law>;
 
 /// Wraps equations written once, templated on the scalar. `Equations` has
 ///   static constexpr int controls, outputs; static constexpr bool stores_charge;
-///   template <class T> void operator()(const std::array<T, controls>& u, std::array<T, outputs>& i, std::array<T, outputs>& q) const;
-///   (optional) double limiting_scale_v(int) const;
+///   template <class T> void operator()(const std::array<T, controls>& u, std::array<T, outputs>& i, std::array<T,
+///   outputs>& q) const; (optional) double limiting_scale_v(int) const;
 /// Derivatives come from forward dual numbers, so they are exact to rounding.
 template <class Equations> class LawOf final : public Law {
   public:
@@ -49,8 +52,10 @@ template <class Equations> class LawOf final : public Law {
         return Law::limiting_scale_v(control);
     }
     void evaluate(const LawSamples& s) const override {
-        if (s.di) evaluate_as<Dual<Equations::controls>>(s);
-        else evaluate_as<double>(s);
+        if (s.di)
+            evaluate_as<Dual<Equations::controls>>(s);
+        else
+            evaluate_as<double>(s);
     }
 
   private:
@@ -76,7 +81,8 @@ template <class Equations> class LawOf final : public Law {
         } else {
             value[o * count + k] = y.v;
             if (derivative)
-                for (int c = 0; c < Equations::controls; ++c) derivative[(o * Equations::controls + c) * count + k] = y.d[c];
+                for (int c = 0; c < Equations::controls; ++c)
+                    derivative[(o * Equations::controls + c) * count + k] = y.d[c];
         }
     }
     Equations equations_;

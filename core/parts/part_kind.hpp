@@ -17,13 +17,13 @@ struct TerminalInfo {
 enum class Range { any, positive, not_negative, negative, from_0_to_1 };
 
 struct ParameterInfo {
-    std::string_view name;                                         ///< contract name and JSON key
-    std::string_view unit;                                         ///< SI unit, "" for a pure number
-    double fallback = std::numeric_limits<double>::quiet_NaN();    ///< NaN: no default
-    bool required = false;                                         ///< must be given (the main value, mostly)
+    std::string_view name;                                      ///< contract name and JSON key
+    std::string_view unit;                                      ///< SI unit, "" for a pure number
+    double fallback = std::numeric_limits<double>::quiet_NaN(); ///< NaN: no default
+    bool required = false;                                      ///< must be given (the main value, mostly)
     Range range = Range::any;
-    std::string_view help;                                         ///< one plain sentence
-    std::vector<std::string_view> choices = {};                    ///< non-empty: a word, not a number; the first is the default
+    std::string_view help;                      ///< one plain sentence
+    std::vector<std::string_view> choices = {}; ///< non-empty: a word, not a number; the first is the default
 };
 
 /// Parameter values of one part, resolved: defaults filled in, temperature coefficient applied to the main value.
@@ -95,7 +95,7 @@ struct PartKind {
     std::string_view ref_prefix; ///< "R"
     std::vector<TerminalInfo> terminals;
     std::vector<ParameterInfo> parameters;
-    int main = 0;                ///< parameter that tolerance and tempco belong to; −1: none
+    int main = 0; ///< parameter that tolerance and tempco belong to; −1: none
     bool tempco_applies = true;
     /// Words for words: what is wrong with a combination of values (empty: nothing). May be null.
     std::string (*check)(const PartValues&) = nullptr;

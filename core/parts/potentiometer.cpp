@@ -1,0 +1,54 @@
+#include "core/parts/kinds.hpp"
+
+namespace sinewright {
+
+namespace {
+
+enum { resistance, position, end_resistance };
+
+/// R_aw = end + R·position, R_wb = end + R·(1 − position). A track of no length is a short, carried by a branch
+/// current.
+void track(PartStamp& s, int a, int b, double r_ohm, std::string_view name) {
+    if (r_ohm > 0) {
+        s.conductance(a, b, 1 / r_ohm);
+        return;
+    }
+    const int j = s.branch_current(name);
+    s.branch(j, a, b);
+    s.g(j, a, 1);
+    s.g(j, b, -1);
+    s.tie(Tie::forces_voltage, a, b);
+}
+
+void stamp(const PartValues& p, PartStamp& s) {
+    const int a = s.net(0), w = s.net(1), b = s.net(2);
+    track(s, a, w, p[end_resistance] + p[resistance] * p[position], "current a to w");
+    track(s, w, b, p[end_resistance] + p[resistance] * (1 - p[position]), "current w to b");
+}
+
+} // namespace
+
+const PartKind potentiometer_kind{
+    .name = "potentiometer",
+    .title = "potentiometer",
+    .ref_prefix = "P",
+    .terminals = {{"a", "start of the track"}, {"w", "wiper"}, {"b", "end of the track"}},
+    .parameters = {{.name = "resistance",
+                    .unit = "Ω",
+                    .required = true,
+                    .range = Range::positive,
+                    .help = "Resistance of the whole track."},
+                   {.name = "position",
+                    .unit = "",
+                    .fallback = 0.5,
+                    .range = Range::from_0_to_1,
+                    .help = "Where the wiper stands, from 0 at a to 1 at b."},
+                   {.name = "end_resistance",
+                    .unit = "Ω",
+                    .fallback = 0,
+                    .range = Range::not_negative,
+                    .help = "What remains between wiper and either end at the stop."}},
+    .stamp = stamp,
+};
+
+} // namespace sinewright
