@@ -1,0 +1,200 @@
+#include "ui/sheet/drawing.hpp"
+#include <algorithm>
+#include <climits>
+#include <cmath>
+#include <set>
+
+namespace sinewright::ui {
+
+namespace {
+constexpr double corner_radius_px = 10;
+constexpr double earth_lead_px = 10, earth_half_bar_px = 13;
+
+/// Cells a name needs to the right of its point.
+int name_cells(const std::string& name) { return 1 + static_cast<int>(name.size() * 9 + 12) / grid_px; }
+} // namespace
+
+QRectF Earth::box() const {
+    const QPointF tip = sheet_point(at), end = tip + direction(way) * (earth_lead_px + 2);
+    const double wide = earth_half_bar_px + 1;
+    return way == Way::left || way == Way::right
+               ? QRectF(QPointF(std::min(tip.x(), end.x()), tip.y() - wide), QPointF(std::max(tip.x(), end.x()), tip.y() + wide))
+               : QRectF(QPointF(tip.x() - wide, std::min(tip.y(), end.y())), QPointF(tip.x() + wide, std::max(tip.y(), end.y())));
+}
+
+std::vector<QPointF> sheet_points(const std::vector<Cell>& cells) {
+    std::vector<QPointF> points;
+    for (Cell c : cells) points.push_back(sheet_point(c));
+    return points;
+}
+
+QPainterPath rounded(const std::vector<QPointF>& corners, double radius) {
+    QPainterPath path;
+    if (corners.empty()) return path;
+    path.moveTo(corners.front());
+    const auto toward = [](QPointF from, QPointF to, double by) {
+        const double length = std::hypot(to.x() - from.x(), to.y() - from.y());
+        return length > 0 ? from + (to - from) * (by / length) : from;
+    };
+    for (std::size_t i = 1; i + 1 < corners.size(); ++i) {
+        const QPointF before = corners[i - 1], here = corners[i], after = corners[i + 1];
+        const double room = std::min({radius, QLineF(before, here).length() / 2, QLineF(here, after).length() / 2});
+        path.lineTo(toward(here, before, room));
+        path.quadTo(here, toward(here, after, room));
+    }
+    path.lineTo(corners.back());
+    return path;
+}
+
+void Drawing::take_over(const Design& design, const Places& worked_out, const Theme& theme) {
+    parts_.clear();
+    for (const Part& part : design.parts) parts_.push_back(shape_of(part, place_of(part, worked_out)));
+    earths_.clear();
+    for (int p = 0; p < static_cast<int>(parts_.size()); ++p)
+        for (int t = 0; t < static_cast<int>(parts_[static_cast<std::size_t>(p)].ports.size()); ++t) {
+            const PlacedPort& port = parts_[static_cast<std::size_t>(p)].ports[static_cast<std::size_t>(t)];
+            if (port.net == ground_net) earths_.push_back({p, t, port.at, port.out});
+        }
+    set_flags(design, theme);
+    set_joins(design);
+    draw_joins();
+    texts_ = place_texts(design, *this, theme);
+    extent_ = {};
+    for (const PartShape& part : parts_) extent_ |= part.reach();
+    for (const PartText& text : texts_) extent_ |= text.ref_box | text.value_box;
+    for (const Earth& earth : earths_) extent_ |= earth.box();
+    for (const Flag& flag : flags_) extent_ |= flag.text_box;
+    for (const Join& join : joins_)
+        for (const QPainterPath& run : join.runs) extent_ |= run.boundingRect();
+}
+
+int Drawing::part_index(std::string_view ref) const {
+    const auto found = std::find_if(parts_.begin(), parts_.end(), [&](const PartShape& p) { return p.ref == ref; });
+    return found == parts_.end() ? -1 : static_cast<int>(found - parts_.begin());
+}
+
+std::pair<int, int> Drawing::join_at(int part, int port) const {
+    for (std::size_t j = 0; j < joins_.size(); ++j)
+        for (std::size_t e = 0; e < joins_[j].ends.size(); ++e)
+            if (joins_[j].ends[e].part == part && joins_[j].ends[e].port == port)
+                return {static_cast<int>(j), static_cast<int>(e)};
+    return {-1, -1};
+}
+
+/// To the right of the net's right-most terminal, past whatever stands in that row.
+Cell Drawing::room_for_output(const std::string& net) const {
+    Cell from{INT_MIN, 0};
+    for (const PartShape& part : parts_)
+        for (const PlacedPort& port : part.ports)
+            if (port.net == net && (port.at.x > from.x || (port.at.x == from.x && port.out == Way::right))) from = port.at;
+    if (from.x == INT_MIN) return {0, 0};
+    Cell at{from.x + 3, from.y};
+    for (bool moved = true; moved;) {
+        moved = false;
+        const QRectF wanted(sheet_point(at) + QPointF(-30, -12), QSizeF(30.0 + name_cells(net) * grid_px, 24));
+        for (const PartShape& part : parts_)
+            if (part.reach().adjusted(-4, -4, 4, 4).intersects(wanted)) {
+                const int past = static_cast<int>(std::ceil(part.reach().right() / grid_px)) + 3;
+                if (past > at.x) at.x = past, moved = true;
+            }
+    }
+    return at;
+}
+
+void Drawing::set_flags(const Design& design, const Theme& theme) {
+    flags_.clear();
+    const QFontMetricsF metrics(theme.font(14, QFont::DemiBold));
+    const auto add = [&](Flag flag) {
+        const double gap = flag.output ? 12 : 6;
+        flag.text_at = sheet_point(flag.at) + QPointF(gap, 5);
+        const QString name = QString::fromStdString(flag.net);
+        flag.text_box = QRectF(flag.text_at.x() - gap, flag.text_at.y() - 15, metrics.horizontalAdvance(name) + gap + 4, 20);
+        flags_.push_back(std::move(flag));
+    };
+    const auto used = [&](const std::string& net) {
+        return std::any_of(parts_.begin(), parts_.end(), [&](const PartShape& part) {
+            return std::any_of(part.ports.begin(), part.ports.end(), [&](const PlacedPort& p) { return p.net == net; });
+        });
+    };
+    bool output_named = false;
+    for (std::size_t i = 0; i < design.labels.size(); ++i) {
+        const Label& label = design.labels[i];
+        const Place at = place_of({"", "", {}, {}, {}, {}, {}, Place{label.x, label.y, 0, false}}, {});
+        const bool output = label.net == design.output && !label.stub_of && !output_named;
+        output_named = output_named || output;
+        add({label.net, nearest_cell({at.x, at.y}), output, static_cast<int>(i), label.stub_of, {}, {}});
+    }
+    if (!output_named && !design.output.empty() && design.output != ground_net && used(design.output))
+        add({design.output, room_for_output(design.output), true, -1, std::nullopt, {}, {}});
+}
+
+void Drawing::set_joins(const Design& design) {
+    joins_.clear();
+    Terrain terrain;
+    std::vector<std::string> order;
+    std::map<std::string, std::vector<JoinEnd>, std::less<>> ends;
+    std::map<std::string, std::vector<JoinEnd>, std::less<>> stubs; // by "part.terminal"
+    std::map<std::pair<std::string, std::string>, std::size_t> stub_flags;
+    for (std::size_t f = 0; f < flags_.size(); ++f)
+        if (flags_[f].stub_of) stub_flags[{flags_[f].stub_of->part, flags_[f].stub_of->terminal}] = f;
+    for (std::size_t p = 0; p < parts_.size(); ++p) {
+        for (Cell c : parts_[p].covered()) terrain.blocked.push_back(c);
+        for (std::size_t t = 0; t < parts_[p].ports.size(); ++t) {
+            const PlacedPort& port = parts_[p].ports[t];
+            const JoinEnd end{static_cast<int>(p), static_cast<int>(t), -1};
+            if (!port.net || port.net == ground_net) {
+                terrain.blocked.push_back(port.at);
+                if (port.net) terrain.blocked.push_back(stepped(port.at, port.out));
+                continue;
+            }
+            const auto stub = stub_flags.find({parts_[p].ref, port.terminal});
+            if (stub != stub_flags.end() && flags_[stub->second].net == *port.net) {
+                stubs[parts_[p].ref + "." + port.terminal] = {end, {-1, -1, static_cast<int>(stub->second)}};
+                continue;
+            }
+            auto& list = ends[*port.net];
+            if (list.empty()) order.push_back(*port.net);
+            list.push_back(end);
+        }
+    }
+    for (std::size_t f = 0; f < flags_.size(); ++f) {
+        for (int i = 1; i < name_cells(flags_[f].net); ++i) terrain.blocked.push_back(stepped(flags_[f].at, Way::right, i));
+        if (!flags_[f].stub_of && ends.contains(flags_[f].net)) ends[flags_[f].net].push_back({-1, -1, static_cast<int>(f)});
+    }
+    const auto want = [&](const std::string& name, const std::string& net, const std::vector<JoinEnd>& list) {
+        WantedNet wanted{name, {}};
+        for (const JoinEnd& end : list)
+            if (end.flag >= 0) wanted.pins.push_back({flags_[static_cast<std::size_t>(end.flag)].at, Way::any});
+            else {
+                const PlacedPort& port = parts_[static_cast<std::size_t>(end.part)].ports[static_cast<std::size_t>(end.port)];
+                wanted.pins.push_back({port.at, port.out});
+            }
+        joins_.push_back({net, list, {}, {}, {}});
+        terrain.nets.push_back(std::move(wanted));
+    };
+    for (const auto& [name, list] : stubs) want("\x01" + name, flags_[static_cast<std::size_t>(list[1].flag)].net, list);
+    std::stable_sort(order.begin(), order.end(),
+                     [&](const std::string& a, const std::string& b) { return ends[a].size() < ends[b].size(); });
+    for (const std::string& net : order) want(net, net, ends[net]);
+    const std::vector<Route>& routes = router_.lay(terrain);
+    for (std::size_t j = 0; j < joins_.size(); ++j) joins_[j].route = routes[j];
+    (void)design;
+}
+
+/// Paths with rounded corners, and a dot wherever three lines or more come together.
+void Drawing::draw_joins() {
+    for (Join& join : joins_) {
+        std::map<Cell, int> lines;
+        for (std::size_t k = 0; k < join.ends.size(); ++k)
+            if (join.ends[k].part >= 0) ++lines[join.route.knots[k].at];
+        for (const Run& run : join.route.runs) {
+            join.runs.push_back(rounded(sheet_points(run.corners), corner_radius_px));
+            if (run.corners.size() < 2) continue;
+            ++lines[run.corners.front()], ++lines[run.corners.back()];
+        }
+        for (const auto& [cell, count] : lines)
+            if (count >= 3) join.dots.push_back(sheet_point(cell));
+    }
+}
+
+} // namespace sinewright::ui
