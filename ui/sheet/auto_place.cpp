@@ -60,7 +60,8 @@ std::vector<Place> orientations(const Symbol& symbol) {
     if (symbol.kind == "supply") return {upright, {0, 0, 180, false}};
     if (symbol.ports.size() == 3 && symbol.body.width() < 60) {
         std::vector<Place> all;
-        for (int turn = 0; turn < 360; turn += 90) all.push_back({0, 0, turn, false}), all.push_back({0, 0, turn, true});
+        for (int turn = 0; turn < 360; turn += 90)
+            all.push_back({0, 0, turn, false}), all.push_back({0, 0, turn, true});
         return all;
     }
     return {upright, mirrored};
@@ -140,7 +141,8 @@ Arrangement::Arrangement(const Design& design) {
         }
         for (std::size_t i = 0; i < symbol.ports.size(); ++i) {
             piece.nets.push_back(net_index(part.net_at(symbol.ports[i].terminal)));
-            if (piece.nets.back() >= 0) nets_[static_cast<std::size_t>(piece.nets.back())].push_back({pieces_.size(), i});
+            if (piece.nets.back() >= 0)
+                nets_[static_cast<std::size_t>(piece.nets.back())].push_back({pieces_.size(), i});
         }
         pieces_.push_back(std::move(piece));
     }
@@ -177,7 +179,8 @@ void Arrangement::rows() {
     int bottom = 0;
     bool any_fixed = false;
     for (const Piece& piece : pieces_)
-        if (piece.fixed) bottom = any_fixed ? std::max(bottom, piece.box().bottom) : piece.box().bottom, any_fixed = true;
+        if (piece.fixed)
+            bottom = any_fixed ? std::max(bottom, piece.box().bottom) : piece.box().bottom, any_fixed = true;
     const int columns = std::max(3, static_cast<int>(std::lround(std::sqrt(double(pieces_.size()) * 1.3))));
     int place = 0;
     for (const std::size_t index : signal_order()) {
@@ -322,7 +325,8 @@ Places Arrangement::places(const Design& design) const {
 } // namespace
 
 Places auto_places(const Design& design) {
-    if (std::all_of(design.parts.begin(), design.parts.end(), [](const Part& p) { return p.place.has_value(); })) return {};
+    if (std::all_of(design.parts.begin(), design.parts.end(), [](const Part& p) { return p.place.has_value(); }))
+        return {};
     Arrangement arrangement(design);
     arrangement.rows();
     arrangement.refine();

@@ -17,9 +17,10 @@ int name_cells(const std::string& name) { return 1 + static_cast<int>(name.size(
 QRectF Earth::box() const {
     const QPointF tip = sheet_point(at), end = tip + direction(way) * (earth_lead_px + 2);
     const double wide = earth_half_bar_px + 1;
-    return way == Way::left || way == Way::right
-               ? QRectF(QPointF(std::min(tip.x(), end.x()), tip.y() - wide), QPointF(std::max(tip.x(), end.x()), tip.y() + wide))
-               : QRectF(QPointF(tip.x() - wide, std::min(tip.y(), end.y())), QPointF(tip.x() + wide, std::max(tip.y(), end.y())));
+    return way == Way::left || way == Way::right ? QRectF(QPointF(std::min(tip.x(), end.x()), tip.y() - wide),
+                                                          QPointF(std::max(tip.x(), end.x()), tip.y() + wide))
+                                                 : QRectF(QPointF(tip.x() - wide, std::min(tip.y(), end.y())),
+                                                          QPointF(tip.x() + wide, std::max(tip.y(), end.y())));
 }
 
 std::vector<QPointF> sheet_points(const std::vector<Cell>& cells) {
@@ -38,7 +39,10 @@ QPainterPath rounded(const std::vector<QPointF>& corners, double radius) {
     };
     for (std::size_t i = 1; i + 1 < corners.size(); ++i) {
         const QPointF before = corners[i - 1], here = corners[i], after = corners[i + 1];
-        const double room = std::min({radius, QLineF(before, here).length() / 2, QLineF(here, after).length() / 2});
+        const double share_before = i == 1 ? 1 : 0.5,
+                     share_after = i + 2 == corners.size() ? 1 : 0.5; // ends give all they have
+        const double room = std::min(
+            {radius, QLineF(before, here).length() * share_before, QLineF(here, after).length() * share_after});
         path.lineTo(toward(here, before, room));
         path.quadTo(here, toward(here, after, room));
     }
@@ -56,7 +60,7 @@ void Drawing::take_over(const Design& design, const Places& worked_out, const Th
             if (port.net == ground_net) earths_.push_back({p, t, port.at, port.out});
         }
     set_flags(design, theme);
-    set_joins(design);
+    set_joins();
     draw_joins();
     texts_ = place_texts(design, *this, theme);
     extent_ = {};
@@ -86,7 +90,8 @@ Cell Drawing::room_for_output(const std::string& net) const {
     Cell from{INT_MIN, 0};
     for (const PartShape& part : parts_)
         for (const PlacedPort& port : part.ports)
-            if (port.net == net && (port.at.x > from.x || (port.at.x == from.x && port.out == Way::right))) from = port.at;
+            if (port.net == net && (port.at.x > from.x || (port.at.x == from.x && port.out == Way::right)))
+                from = port.at;
     if (from.x == INT_MIN) return {0, 0};
     Cell at{from.x + 3, from.y};
     for (bool moved = true; moved;) {
@@ -108,7 +113,8 @@ void Drawing::set_flags(const Design& design, const Theme& theme) {
         const double gap = flag.output ? 12 : 6;
         flag.text_at = sheet_point(flag.at) + QPointF(gap, 5);
         const QString name = QString::fromStdString(flag.net);
-        flag.text_box = QRectF(flag.text_at.x() - gap, flag.text_at.y() - 15, metrics.horizontalAdvance(name) + gap + 4, 20);
+        flag.text_box =
+            QRectF(flag.text_at.x() - gap, flag.text_at.y() - 15, metrics.horizontalAdvance(name) + gap + 4, 20);
         flags_.push_back(std::move(flag));
     };
     const auto used = [&](const std::string& net) {
@@ -128,7 +134,7 @@ void Drawing::set_flags(const Design& design, const Theme& theme) {
         add({design.output, room_for_output(design.output), true, -1, std::nullopt, {}, {}});
 }
 
-void Drawing::set_joins(const Design& design) {
+void Drawing::set_joins() {
     joins_.clear();
     Terrain terrain;
     std::vector<std::string> order;
@@ -158,27 +164,31 @@ void Drawing::set_joins(const Design& design) {
         }
     }
     for (std::size_t f = 0; f < flags_.size(); ++f) {
-        for (int i = 1; i < name_cells(flags_[f].net); ++i) terrain.blocked.push_back(stepped(flags_[f].at, Way::right, i));
-        if (!flags_[f].stub_of && ends.contains(flags_[f].net)) ends[flags_[f].net].push_back({-1, -1, static_cast<int>(f)});
+        for (int i = 1; i < name_cells(flags_[f].net); ++i)
+            terrain.blocked.push_back(stepped(flags_[f].at, Way::right, i));
+        if (!flags_[f].stub_of && ends.contains(flags_[f].net))
+            ends[flags_[f].net].push_back({-1, -1, static_cast<int>(f)});
     }
     const auto want = [&](const std::string& name, const std::string& net, const std::vector<JoinEnd>& list) {
         WantedNet wanted{name, {}};
         for (const JoinEnd& end : list)
-            if (end.flag >= 0) wanted.pins.push_back({flags_[static_cast<std::size_t>(end.flag)].at, Way::any});
+            if (end.flag >= 0)
+                wanted.pins.push_back({flags_[static_cast<std::size_t>(end.flag)].at, Way::any});
             else {
-                const PlacedPort& port = parts_[static_cast<std::size_t>(end.part)].ports[static_cast<std::size_t>(end.port)];
+                const PlacedPort& port =
+                    parts_[static_cast<std::size_t>(end.part)].ports[static_cast<std::size_t>(end.port)];
                 wanted.pins.push_back({port.at, port.out});
             }
         joins_.push_back({net, list, {}, {}, {}});
         terrain.nets.push_back(std::move(wanted));
     };
-    for (const auto& [name, list] : stubs) want("\x01" + name, flags_[static_cast<std::size_t>(list[1].flag)].net, list);
+    for (const auto& [name, list] : stubs)
+        want("\x01" + name, flags_[static_cast<std::size_t>(list[1].flag)].net, list);
     std::stable_sort(order.begin(), order.end(),
                      [&](const std::string& a, const std::string& b) { return ends[a].size() < ends[b].size(); });
     for (const std::string& net : order) want(net, net, ends[net]);
     const std::vector<Route>& routes = router_.lay(terrain);
     for (std::size_t j = 0; j < joins_.size(); ++j) joins_[j].route = routes[j];
-    (void)design;
 }
 
 /// Paths with rounded corners, and a dot wherever three lines or more come together.
@@ -188,9 +198,30 @@ void Drawing::draw_joins() {
         for (std::size_t k = 0; k < join.ends.size(); ++k)
             if (join.ends[k].part >= 0) ++lines[join.route.knots[k].at];
         for (const Run& run : join.route.runs) {
-            join.runs.push_back(rounded(sheet_points(run.corners), corner_radius_px));
             if (run.corners.size() < 2) continue;
             ++lines[run.corners.front()], ++lines[run.corners.back()];
+        }
+        for (const Run& run : join.route.runs) {
+            std::vector<QPointF> points = sheet_points(run.corners);
+            const auto round_into_lead = [&](int knot, QPointF tip, QPointF next) {
+                const int pin = join.route.knots[static_cast<std::size_t>(knot)].pin;
+                const JoinEnd end = pin < 0 ? JoinEnd{} : join.ends[static_cast<std::size_t>(pin)];
+                if (end.part < 0) return tip;
+                PartShape& part = parts_[static_cast<std::size_t>(end.part)];
+                const PlacedPort& port = part.ports[static_cast<std::size_t>(end.port)];
+                const QPointF out = direction(port.out);
+                if (lines[port.at] != 2 || QPointF::dotProduct(next - tip, out) != 0) return tip;
+                const Cell unturned = part.symbol->ports[static_cast<std::size_t>(end.port)].at;
+                part.cut_tips.push_back(sheet_point(unturned));
+                return tip - out * lead_cut_px;
+            };
+            if (points.size() > 1) {
+                const QPointF head = round_into_lead(run.from, points.front(), points[1]);
+                const QPointF tail = round_into_lead(run.to, points.back(), points[points.size() - 2]);
+                if (head != points.front()) points.insert(points.begin(), head);
+                if (tail != points.back()) points.push_back(tail);
+            }
+            join.runs.push_back(rounded(points, corner_radius_px));
         }
         for (const auto& [cell, count] : lines)
             if (count >= 3) join.dots.push_back(sheet_point(cell));

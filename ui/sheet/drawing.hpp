@@ -32,7 +32,7 @@ struct Flag {
     std::string net;
     Cell at;
     bool output = false;
-    int label = -1;                      ///< index into Design::labels; −1: set where there is room
+    int label = -1; ///< index into Design::labels; −1: set where there is room
     std::optional<TerminalRef> stub_of;
     QPointF text_at;
     QRectF text_box;
@@ -64,7 +64,7 @@ class Drawing {
   private:
     void set_flags(const Design& design, const Theme& theme);
     Cell room_for_output(const std::string& net) const;
-    void set_joins(const Design& design);
+    void set_joins();
     void draw_joins();
     void set_texts(const Design& design, const Theme& theme);
 

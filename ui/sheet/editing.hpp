@@ -12,16 +12,18 @@ using TerminalRefs = std::vector<TerminalRef>;
 
 // Names
 std::string free_ref(const Design& design, std::string_view kind);
-std::string free_net(const Design& design);           ///< n1, n2, …
-bool named_by_program(std::string_view net);          ///< "n" and digits
+std::string free_net(const Design& design);  ///< n1, n2, …
+bool named_by_program(std::string_view net); ///< "n" and digits
 std::optional<std::string> net_of(const Design& design, const TerminalRef& terminal);
 TerminalRefs terminals_on(const Design& design, std::string_view net);
-Refusal rename_net(Design& design, const std::string& net, const std::string& name); ///< to a name in use: the nets become one
+Refusal rename_net(Design& design, const std::string& net,
+                   const std::string& name); ///< to a name in use: the nets become one
 Refusal rename_part(Design& design, const std::string& ref, const std::string& name);
 
 // Parts
 /// A part of a kind with typical starting values, every end free, a free reference.
-Part starting_part(const Design& design, std::string_view kind, const Place& place, const std::optional<Value>& value = {});
+Part starting_part(const Design& design, std::string_view kind, const Place& place,
+                   const std::optional<Value>& value = {});
 void drop(Design& design, const Part& part); ///< free ends that lie on another part's end are joined to it
 void remove_parts(Design& design, const std::vector<std::string>& refs);
 void move_parts(Design& design, const std::vector<std::string>& refs, double dx, double dy);
@@ -29,7 +31,8 @@ void turn_parts(Design& design, const std::vector<std::string>& refs, int quarte
 void flip_parts(Design& design, const std::vector<std::string>& refs, bool upside_down);
 /// The named parts alone, with the nets between them; for the clipboard.
 Design excerpt(const Design& design, const std::vector<std::string>& refs);
-/// Adds an excerpt's parts under free names, shifted. Nets that lie wholly in it are new, gnd stays gnd, other ends are free.
+/// Adds an excerpt's parts under free names, shifted. Nets that lie wholly in it are new, gnd stays gnd, other ends are
+/// free.
 std::vector<std::string> add_copies(Design& design, const Design& excerpt, double dx, double dy);
 void fix_places(Design& design, const Places& worked_out);
 /// Joins free ends of these parts that came to lie on other parts' ends.

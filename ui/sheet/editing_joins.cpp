@@ -15,7 +15,8 @@ TerminalNet* find_terminal(Design& design, const TerminalRef& terminal) {
 }
 
 bool has_label(const Design& design, std::string_view net) {
-    return std::any_of(design.labels.begin(), design.labels.end(), [&](const Label& label) { return label.net == net; });
+    return std::any_of(design.labels.begin(), design.labels.end(),
+                       [&](const Label& label) { return label.net == net; });
 }
 
 /// A net that its last terminal left is forgotten, one with a single terminal and no name of its own frees it.
@@ -40,7 +41,8 @@ bool stays_before(const Design& design, const std::string& a, const std::string&
 }
 
 Refusal shorted(const Design& design) {
-    return QObject::tr("%1 is the output: joining it to ground would short it.").arg(QString::fromStdString(design.output));
+    return QObject::tr("%1 is the output: joining it to ground would short it.")
+        .arg(QString::fromStdString(design.output));
 }
 
 } // namespace
@@ -123,7 +125,8 @@ void set_cut(Design& design, const TerminalRef& terminal) { design.cut = termina
 void join_touching(Design& design, const std::vector<std::string>& refs) {
     std::map<Cell, TerminalRefs> at;
     for (const Part& part : design.parts)
-        for (const PlacedPort& port : shape_of(part, place_of(part, {})).ports) at[port.at].push_back({part.ref, port.terminal});
+        for (const PlacedPort& port : shape_of(part, place_of(part, {})).ports)
+            at[port.at].push_back({part.ref, port.terminal});
     const auto ours = [&](const TerminalRef& t) { return std::find(refs.begin(), refs.end(), t.part) != refs.end(); };
     for (const auto& [cell, ends] : at)
         for (std::size_t i = 1; i < ends.size(); ++i) {

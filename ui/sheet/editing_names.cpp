@@ -7,7 +7,8 @@
 namespace sinewright::ui {
 
 bool named_by_program(std::string_view net) {
-    return net.size() > 1 && net[0] == 'n' && std::all_of(net.begin() + 1, net.end(), [](char c) { return c >= '0' && c <= '9'; });
+    return net.size() > 1 && net[0] == 'n' &&
+           std::all_of(net.begin() + 1, net.end(), [](char c) { return c >= '0' && c <= '9'; });
 }
 
 std::string free_ref(const Design& design, std::string_view kind) {

@@ -18,21 +18,36 @@ struct StartingValue {
     std::string_view kind, parameter, text;
 };
 constexpr StartingValue starting_values[] = {
-    {"resistor", "resistance", "10k"},           {"capacitor", "capacitance", "10n"},
-    {"inductor", "inductance", "10m"},           {"potentiometer", "resistance", "10k"},
-    {"supply", "voltage", "9"},                  {"opamp", "model", "macro"},
-    {"opamp", "gbw", "10M"},                     {"opamp", "slew_rate", "10M"},
-    {"opamp", "swing_high", "13"},               {"opamp", "swing_low", "-13"},
-    {"opamp", "output_resistance", "50"},        {"limiter", "law", "tanh"},
-    {"limiter", "gain", "1"},                    {"limiter", "limit", "1"},
-    {"zener", "breakdown_voltage", "5.1"},       {"lamp", "cold_resistance", "480"},
-    {"lamp", "heat_capacity", "14e-6"},          {"lamp", "conduction", "40e-6"},
-    {"lamp", "radiation", "40e-15"},             {"thermistor", "resistance_25", "5k"},
-    {"thermistor", "beta", "3500"},              {"thermistor", "heat_capacity", "100e-6"},
-    {"thermistor", "dissipation", "50e-6"},      {"jfet", "pinch_off", "-2"},
-    {"jfet", "beta", "1e-3"},                    {"photocell", "sensitivity", "0.1"},
-    {"photocell", "lag", "20m"},                 {"multiplier", "scale", "0.1"},
-    {"servo", "detector_lag", "10m"},            {"servo", "setpoint", "2"},
+    {"resistor", "resistance", "10k"},
+    {"capacitor", "capacitance", "10n"},
+    {"inductor", "inductance", "10m"},
+    {"potentiometer", "resistance", "10k"},
+    {"supply", "voltage", "9"},
+    {"opamp", "model", "macro"},
+    {"opamp", "gbw", "10M"},
+    {"opamp", "slew_rate", "10M"},
+    {"opamp", "swing_high", "13"},
+    {"opamp", "swing_low", "-13"},
+    {"opamp", "output_resistance", "50"},
+    {"limiter", "law", "tanh"},
+    {"limiter", "gain", "1"},
+    {"limiter", "limit", "1"},
+    {"zener", "breakdown_voltage", "5.1"},
+    {"lamp", "cold_resistance", "480"},
+    {"lamp", "heat_capacity", "14e-6"},
+    {"lamp", "conduction", "40e-6"},
+    {"lamp", "radiation", "40e-15"},
+    {"thermistor", "resistance_25", "5k"},
+    {"thermistor", "beta", "3500"},
+    {"thermistor", "heat_capacity", "100e-6"},
+    {"thermistor", "dissipation", "50e-6"},
+    {"jfet", "pinch_off", "-2"},
+    {"jfet", "beta", "1e-3"},
+    {"photocell", "sensitivity", "0.1"},
+    {"photocell", "lag", "20m"},
+    {"multiplier", "scale", "0.1"},
+    {"servo", "detector_lag", "10m"},
+    {"servo", "setpoint", "2"},
     {"servo", "rate", "2"},
 };
 
@@ -52,9 +67,8 @@ void put(Part& part, std::string_view name, const ParameterValue& value) {
         }
     const PartKind* kind = find_part_kind(part.kind);
     const int order = kind ? kind->parameter(name) : 0;
-    const auto after = std::find_if(part.parameters.begin(), part.parameters.end(), [&](const Parameter& p) {
-        return kind && kind->parameter(p.name) > order;
-    });
+    const auto after = std::find_if(part.parameters.begin(), part.parameters.end(),
+                                    [&](const Parameter& p) { return kind && kind->parameter(p.name) > order; });
     part.parameters.insert(after, {std::string(name), value});
 }
 
@@ -92,9 +106,11 @@ Part starting_part(const Design& design, std::string_view kind, const Place& pla
     part.place = place;
     const PartKind* known = find_part_kind(kind);
     if (!known) return part;
-    for (const TerminalInfo& terminal : known->terminals) part.terminals.push_back({std::string(terminal.name), std::nullopt});
+    for (const TerminalInfo& terminal : known->terminals)
+        part.terminals.push_back({std::string(terminal.name), std::nullopt});
     for (const StartingValue& start : starting_values)
-        if (start.kind == kind && known->parameter(start.parameter) >= 0) put(part, start.parameter, starting_value(*known, start));
+        if (start.kind == kind && known->parameter(start.parameter) >= 0)
+            put(part, start.parameter, starting_value(*known, start));
     const ParameterInfo* shown = shown_parameter(part);
     if (value && shown) put(part, shown->name, *value);
     return part;
@@ -114,7 +130,8 @@ void remove_parts(Design& design, const std::vector<std::string>& refs) {
     }
     std::erase_if(design.parts, [&](const Part& part) { return chosen(refs, part.ref); });
     if (design.cut && chosen(refs, design.cut->part)) design.cut.reset();
-    for (Group& group : design.groups) std::erase_if(group.members, [&](const std::string& m) { return chosen(refs, m); });
+    for (Group& group : design.groups)
+        std::erase_if(group.members, [&](const std::string& m) { return chosen(refs, m); });
     std::erase_if(design.groups, [](const Group& group) { return group.members.empty(); });
     for (Dial& dial : design.dials)
         std::erase_if(dial.sets, [&](const std::string& set) { return chosen(refs, set.substr(0, set.find('.'))); });
@@ -140,9 +157,12 @@ void turn_parts(Design& design, const std::vector<std::string>& refs, int quarte
 void flip_parts(Design& design, const std::vector<std::string>& refs, bool upside_down) {
     const QPointF about = middle(design, refs);
     each_place(design, refs, [&](Place& place) {
-        if (upside_down) place.y = 2 * about.y() - place.y;
-        else place.x = 2 * about.x() - place.x;
-        // Mirrored left to right after a turn by t equals mirrored first and turned by −t; upside down is half a turn more.
+        if (upside_down)
+            place.y = 2 * about.y() - place.y;
+        else
+            place.x = 2 * about.x() - place.x;
+        // Mirrored left to right after a turn by t equals mirrored first and turned by −t; upside down is half a turn
+        // more.
         place.turn = (360 - place.turn + (upside_down ? 180 : 0)) % 360;
         place.flip = !place.flip;
     });
@@ -157,7 +177,8 @@ Design excerpt(const Design& design, const std::vector<std::string>& refs) {
     for (const Part& part : part_of.parts)
         for (const TerminalNet& t : part.terminals) {
             if (!t.net || *t.net == ground_net) continue;
-            const bool whole = terminals_on(design, *t.net).size() == terminals_on(part_of, *t.net).size() && t.net != design.output;
+            const bool whole =
+                terminals_on(design, *t.net).size() == terminals_on(part_of, *t.net).size() && t.net != design.output;
             if (whole) continue;
             for (Part& mine : part_of.parts)
                 for (TerminalNet& end : mine.terminals)
@@ -213,8 +234,9 @@ Refusal set_value(Design& design, const std::string& ref, const QString& text) {
                          (parameter->range == Range::negative && *si < 0) ||
                          (parameter->range == Range::from_0_to_1 && *si >= 0 && *si <= 1);
     if (!allowed)
-        return parameter->range == Range::negative ? QObject::tr("%1 must be below zero.").arg(QString::fromStdString(ref))
-                                                   : QObject::tr("%1 must be above zero.").arg(QString::fromStdString(ref));
+        return parameter->range == Range::negative
+                   ? QObject::tr("%1 must be below zero.").arg(QString::fromStdString(ref))
+                   : QObject::tr("%1 must be above zero.").arg(QString::fromStdString(ref));
     put(*part, parameter->name, Value{*si, typed});
     return {};
 }

@@ -26,7 +26,9 @@ Obstacles::Obstacles(const Drawing& drawing) {
     for (const Join& join : drawing.joins())
         for (const Run& run : join.route.runs)
             for (std::size_t i = 1; i < run.corners.size(); ++i)
-                add(QRectF(sheet_point(run.corners[i - 1]), sheet_point(run.corners[i])).normalized().adjusted(-4, -4, 4, 4));
+                add(QRectF(sheet_point(run.corners[i - 1]), sheet_point(run.corners[i]))
+                        .normalized()
+                        .adjusted(-4, -4, 4, 4));
 }
 
 void Obstacles::add(const QRectF& rect) {

@@ -45,10 +45,11 @@ void say_margin(CutMark& mark, const Findings* findings) {
         return;
     }
     const double margin_db = loop.barkhausen->startup_margin_db;
-    mark.words = (margin_db > 0 ? QStringLiteral("+") : QString()) +
-                 QString::fromStdString(plain_text(margin_db, 2)) + QStringLiteral(" dB");
+    mark.words = (margin_db > 0 ? QStringLiteral("+") : QString()) + QString::fromStdString(plain_text(margin_db, 2)) +
+                 QStringLiteral(" dB");
     mark.detail = QObject::tr("Start-up margin with the loop opened at %1.").arg(terminal_text(mark.terminal));
-    if (loop.cut_chosen && !loop.cut_reason.empty()) mark.detail += QLatin1Char(' ') + QString::fromStdString(loop.cut_reason);
+    if (loop.cut_chosen && !loop.cut_reason.empty())
+        mark.detail += QLatin1Char(' ') + QString::fromStdString(loop.cut_reason);
 }
 
 /// Below, above, right or left of the brackets, where least is covered.
@@ -62,7 +63,8 @@ QRectF chip_place(const CutMark& mark, double width, const Obstacles& obstacles)
     QRectF best;
     double least = 0;
     for (const QPointF& offset : offsets) {
-        const QRectF chip(mark.at.x() + offset.x() - width / 2, mark.at.y() + offset.y() - chip_height_px / 2, width, chip_height_px);
+        const QRectF chip(mark.at.x() + offset.x() - width / 2, mark.at.y() + offset.y() - chip_height_px / 2, width,
+                          chip_height_px);
         const double crossed = obstacles.overlap(chip.adjusted(-2, -2, 2, 2));
         if (best.isValid() && crossed >= least) continue;
         best = chip, least = crossed;
@@ -70,11 +72,15 @@ QRectF chip_place(const CutMark& mark, double width, const Obstacles& obstacles)
     return best;
 }
 
-void set_cut(const Design& design, const Drawing& drawing, const Findings* findings, bool stale, const Theme& theme, Overlay& overlay) {
+void set_cut(const Design& design, const Drawing& drawing, const Findings* findings, bool stale, const Theme& theme,
+             Overlay& overlay) {
     CutMark mark;
-    if (design.cut) mark.terminal = *design.cut;
-    else if (findings && findings->loop) mark.terminal = findings->loop->cut, mark.chosen = true;
-    else return;
+    if (design.cut)
+        mark.terminal = *design.cut;
+    else if (findings && findings->loop)
+        mark.terminal = findings->loop->cut, mark.chosen = true;
+    else
+        return;
     const auto [part, port] = terminal_index(drawing, mark.terminal);
     if (port < 0) return;
     lay_ribbon(design, drawing, mark.terminal, overlay);
@@ -111,11 +117,13 @@ void mark_fault(const Fault& fault, const Drawing& drawing, Overlay& overlay) {
         return;
     }
     const auto dot = fault.where.find('.');
-    const auto [part, port] = terminal_index(drawing, {fault.where.substr(0, dot), dot == std::string::npos ? "" : fault.where.substr(dot + 1)});
+    const auto [part, port] = terminal_index(
+        drawing, {fault.where.substr(0, dot), dot == std::string::npos ? "" : fault.where.substr(dot + 1)});
     if (part < 0) return;
     const PartShape& shape = drawing.parts()[static_cast<std::size_t>(part)];
     overlay.faulty_parts.insert(part);
-    const QPointF badge = port >= 0 ? sheet_point(shape.ports[static_cast<std::size_t>(port)].at) + direction(shape.ports[static_cast<std::size_t>(port)].out) * 12
+    const QPointF badge = port >= 0 ? sheet_point(shape.ports[static_cast<std::size_t>(port)].at) +
+                                          direction(shape.ports[static_cast<std::size_t>(port)].out) * 12
                                     : shape.body.topRight() + QPointF(8, -8);
     overlay.faults.push_back({badge, sentence_of(fault)});
 }
@@ -138,7 +146,8 @@ std::pair<QPointF, QPointF> cut_point(const Drawing& drawing, int part, int port
     return {tip + direction(placed.out) * 10, direction(placed.out)};
 }
 
-Overlay overlay_of(const Design& design, const Drawing& drawing, const Findings* findings, bool stale, const Theme& theme) {
+Overlay overlay_of(const Design& design, const Drawing& drawing, const Findings* findings, bool stale,
+                   const Theme& theme) {
     Overlay overlay;
     set_cut(design, drawing, findings, stale, theme, overlay);
     if (findings && !stale)

@@ -10,7 +10,7 @@ struct CutMark {
     TerminalRef terminal;
     bool chosen = false; ///< by the program, the design names none
     QPointF at;
-    QPointF along;  ///< unit vector of the join there
+    QPointF along; ///< unit vector of the join there
     QRectF chip;
     QString words;  ///< in the chip
     QString detail; ///< a sentence for the pointer and the screen reader
@@ -38,7 +38,8 @@ struct Overlay {
 
 /// @param findings  null before the first results
 /// @param stale     the findings belong to an older drawing
-Overlay overlay_of(const Design& design, const Drawing& drawing, const Findings* findings, bool stale, const Theme& theme);
+Overlay overlay_of(const Design& design, const Drawing& drawing, const Findings* findings, bool stale,
+                   const Theme& theme);
 
 /// The point and direction of a cut at a terminal.
 std::pair<QPointF, QPointF> cut_point(const Drawing& drawing, int part, int port);

@@ -4,7 +4,9 @@ namespace sinewright::ui {
 
 namespace {
 
-QPen round_pen(const QColor& colour, double width) { return {colour, width, Qt::SolidLine, Qt::RoundCap, Qt::RoundJoin}; }
+QPen round_pen(const QColor& colour, double width) {
+    return {colour, width, Qt::SolidLine, Qt::RoundCap, Qt::RoundJoin};
+}
 
 void paint_ribbon(QPainter& painter, const Overlay& overlay, const Theme& theme) {
     painter.setBrush(Qt::NoBrush);
@@ -21,15 +23,16 @@ void paint_ribbon(QPainter& painter, const Overlay& overlay, const Theme& theme)
     }
 }
 
-void paint_joins(QPainter& painter, const Drawing& drawing, const Overlay& overlay, const Emphasis& emphasis, const Theme& theme,
-                 double line_px) {
+void paint_joins(QPainter& painter, const Drawing& drawing, const Overlay& overlay, const Emphasis& emphasis,
+                 const Theme& theme, double line_px) {
     for (std::size_t j = 0; j < drawing.joins().size(); ++j) {
         const Join& join = drawing.joins()[j];
         const QColor ink = overlay.faulty_nets.contains(join.net) ? theme.misses : theme.ink;
         painter.setBrush(Qt::NoBrush);
         for (std::size_t r = 0; r < join.runs.size(); ++r) {
             const bool selected = static_cast<int>(j) == emphasis.join && static_cast<int>(r) == emphasis.run;
-            const bool hovered = static_cast<int>(j) == emphasis.hovered_join && static_cast<int>(r) == emphasis.hovered_run;
+            const bool hovered =
+                static_cast<int>(j) == emphasis.hovered_join && static_cast<int>(r) == emphasis.hovered_run;
             painter.setPen(round_pen(selected || hovered ? theme.accent : ink, selected ? line_px * 1.75 : line_px));
             painter.drawPath(join.runs[r]);
         }
@@ -117,12 +120,13 @@ void paint_part(QPainter& painter, const PartShape& part, const Theme& theme, co
     painter.save();
     painter.setTransform(part.transform, true);
     SymbolPen pen(painter, theme, ink, line_px, part.upright());
+    pen.cut_leads(part.cut_tips);
     part.symbol->draw(pen);
     painter.restore();
 }
 
-void paint_sheet(QPainter& painter, const Drawing& drawing, const Overlay& overlay, const Emphasis& emphasis, const Theme& theme,
-                 double line_px) {
+void paint_sheet(QPainter& painter, const Drawing& drawing, const Overlay& overlay, const Emphasis& emphasis,
+                 const Theme& theme, double line_px) {
     painter.setRenderHint(QPainter::Antialiasing);
     painter.setRenderHint(QPainter::TextAntialiasing);
     paint_ribbon(painter, overlay, theme);

@@ -5,8 +5,8 @@
 namespace sinewright::ui {
 
 namespace {
-constexpr double clearance_px = 6;      // between a body and the nearest join
-constexpr double farthest_px = 15000;   // a file may place parts anywhere; the sheet has an edge
+constexpr double clearance_px = 6;    // between a body and the nearest join
+constexpr double farthest_px = 15000; // a file may place parts anywhere; the sheet has an edge
 
 int quarter_turns(const Place& place) { return ((place.turn / 90) % 4 + 4) % 4; }
 double on_grid(double v) {
@@ -17,8 +17,10 @@ double on_grid(double v) {
 
 Place place_of(const Part& part, const Places& worked_out) {
     Place place;
-    if (part.place) place = *part.place;
-    else if (const auto found = worked_out.find(part.ref); found != worked_out.end()) place = found->second;
+    if (part.place)
+        place = *part.place;
+    else if (const auto found = worked_out.find(part.ref); found != worked_out.end())
+        place = found->second;
     place.x = on_grid(place.x), place.y = on_grid(place.y);
     place.turn = quarter_turns(place) * 90;
     return place;
@@ -56,7 +58,7 @@ std::vector<Cell> cells_under(const QRectF& body) {
 }
 
 PartShape shape_of(const Part& part, const Place& place) {
-    PartShape shape{part.ref, place, &symbol_of(part.kind), {}, {}, {}};
+    PartShape shape{part.ref, place, &symbol_of(part.kind), {}, {}, {}, {}};
     shape.transform.translate(place.x, place.y);
     shape.transform.rotate(place.turn);
     shape.transform.scale(place.flip ? -1 : 1, 1);
@@ -65,8 +67,8 @@ PartShape shape_of(const Part& part, const Place& place) {
     for (const Port& port : shape.symbol->ports) {
         const Cell offset = oriented(port.at, place);
         const std::string terminal(port.terminal);
-        shape.ports.push_back({terminal, {centre.x + offset.x, centre.y + offset.y}, oriented(port.out, place),
-                               part.net_at(terminal)});
+        shape.ports.push_back(
+            {terminal, {centre.x + offset.x, centre.y + offset.y}, oriented(port.out, place), part.net_at(terminal)});
     }
     return shape;
 }
@@ -76,7 +78,8 @@ QTransform PartShape::upright() const {
 }
 
 const PlacedPort* PartShape::port(std::string_view terminal) const {
-    const auto found = std::find_if(ports.begin(), ports.end(), [&](const PlacedPort& p) { return p.terminal == terminal; });
+    const auto found =
+        std::find_if(ports.begin(), ports.end(), [&](const PlacedPort& p) { return p.terminal == terminal; });
     return found == ports.end() ? nullptr : &*found;
 }
 
@@ -84,7 +87,8 @@ std::vector<Cell> PartShape::covered() const {
     std::vector<Cell> cells = cells_under(body);
     for (const PlacedPort& port : ports) {
         Cell c = stepped(port.at, opposite(port.out));
-        for (int i = 0; i < 4 && !body.contains(sheet_point(c)); ++i, c = stepped(c, opposite(port.out))) cells.push_back(c);
+        for (int i = 0; i < 4 && !body.contains(sheet_point(c)); ++i, c = stepped(c, opposite(port.out)))
+            cells.push_back(c);
     }
     std::erase_if(cells, [&](Cell c) {
         return std::any_of(ports.begin(), ports.end(), [&](const PlacedPort& p) { return p.at == c; });

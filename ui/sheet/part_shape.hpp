@@ -30,6 +30,7 @@ struct PartShape {
     QTransform transform; ///< symbol → sheet
     QRectF body;          ///< on the sheet
     std::vector<PlacedPort> ports;
+    std::vector<QPointF> cut_tips; ///< symbol coordinates; see SymbolPen::cut_leads
 
     QTransform upright() const; ///< undoes turn and flip
     const PlacedPort* port(std::string_view terminal) const;

@@ -21,7 +21,8 @@ std::vector<Side> sides_to_try(const PartShape& part) {
 }
 
 /// The text set at one side: in one line above and below, in two beside. Empty texts take no room.
-PartText set_at(PartText text, const QRectF& body, Side side, double shift, const QFontMetricsF& ref_font, const QFontMetricsF& value_font) {
+PartText set_at(PartText text, const QRectF& body, Side side, double shift, const QFontMetricsF& ref_font,
+                const QFontMetricsF& value_font) {
     const double ref_width = ref_font.horizontalAdvance(text.ref);
     const double value_width = text.value.isEmpty() ? 0 : value_font.horizontalAdvance(text.value);
     const bool beside = side == Side::right || side == Side::left;
@@ -40,7 +41,8 @@ PartText set_at(PartText text, const QRectF& body, Side side, double shift, cons
         text.value_at = {left + ref_width + between_px, base};
     }
     text.ref_box = {text.ref_at.x(), text.ref_at.y() - 11, ref_width, 14};
-    text.value_box = text.value.isEmpty() ? QRectF() : QRectF(text.value_at.x(), text.value_at.y() - 12, value_width, 16);
+    text.value_box =
+        text.value.isEmpty() ? QRectF() : QRectF(text.value_at.x(), text.value_at.y() - 12, value_width, 16);
     return text;
 }
 

@@ -27,14 +27,19 @@ QString spoken_value(double si, std::string_view unit) {
         double factor;
         const char* word;
     };
-    static constexpr Prefix prefixes[] = {{1e9, "giga"}, {1e6, "mega"}, {1e3, "kilo"}, {1, ""}, {1e-3, "milli"},
-                                          {1e-6, "micro"}, {1e-9, "nano"}, {1e-12, "pico"}};
+    static constexpr Prefix prefixes[] = {{1e9, "giga"},   {1e6, "mega"},   {1e3, "kilo"},  {1, ""},
+                                          {1e-3, "milli"}, {1e-6, "micro"}, {1e-9, "nano"}, {1e-12, "pico"}};
     QString word = QString::fromUtf8(unit.data(), static_cast<qsizetype>(unit.size()));
-    if (unit == "Ω") word = QObject::tr("ohm");
-    else if (unit == "F") word = QObject::tr("farad");
-    else if (unit == "H") word = QObject::tr("henry");
-    else if (unit == "V") word = QObject::tr("volt");
-    else if (unit == "Hz") word = QObject::tr("hertz");
+    if (unit == "Ω")
+        word = QObject::tr("ohm");
+    else if (unit == "F")
+        word = QObject::tr("farad");
+    else if (unit == "H")
+        word = QObject::tr("henry");
+    else if (unit == "V")
+        word = QObject::tr("volt");
+    else if (unit == "Hz")
+        word = QObject::tr("hertz");
     for (const Prefix& prefix : prefixes)
         if (std::fabs(si) >= prefix.factor * 0.9999999 || (prefix.factor == 1e-12)) {
             const QString number = QString::number(si / prefix.factor, 'g', 4);
@@ -62,7 +67,7 @@ const ParameterInfo* shown_parameter(const Part& part) {
     const PartKind* kind = find_part_kind(part.kind);
     if (!kind) return nullptr;
     int index = part.kind == "opamp" ? kind->parameter("gbw") : kind->main; // an amplifier is known by its speed
-    if (part.kind == "diode") index = -1;                                   // its saturation current tells nobody anything
+    if (part.kind == "diode") index = -1; // its saturation current tells nobody anything
     return index < 0 ? nullptr : &kind->parameters[static_cast<std::size_t>(index)];
 }
 
@@ -77,8 +82,10 @@ QString value_text(const Part& part) {
 
 QString terminal_text(const TerminalRef& terminal) {
     QString name = QString::fromStdString(terminal.terminal);
-    if (name == QLatin1String("plus")) name = QStringLiteral("+");
-    else if (name == QLatin1String("minus")) name = QStringLiteral("−");
+    if (name == QLatin1String("plus"))
+        name = QStringLiteral("+");
+    else if (name == QLatin1String("minus"))
+        name = QStringLiteral("−");
     return QString::fromStdString(terminal.part) + QLatin1Char(' ') + name;
 }
 
@@ -89,19 +96,24 @@ QString spoken_part(const Part& part) {
                            : QString::fromStdString(part.kind)};
     const ParameterInfo* parameter = shown_parameter(part);
     const Value* value = parameter ? number_of(part, parameter->name) : nullptr;
-    if (is_ideal(part)) words << QObject::tr("ideal");
-    else if (value) words << spoken_value(value->si, parameter->unit);
+    if (is_ideal(part))
+        words << QObject::tr("ideal");
+    else if (value)
+        words << spoken_value(value->si, parameter->unit);
     QStringList ends;
     for (const TerminalNet& terminal : part.terminals) {
-        const QString net = !terminal.net                ? QObject::tr("nothing")
+        const QString net = !terminal.net                 ? QObject::tr("nothing")
                             : *terminal.net == ground_net ? QObject::tr("ground")
                                                           : QString::fromStdString(*terminal.net);
         ends << (part.terminals.size() == 2
                      ? net
-                     : QObject::tr("%1 to %2").arg(terminal_text({part.ref, terminal.terminal}).section(QLatin1Char(' '), 1), net));
+                     : QObject::tr("%1 to %2")
+                           .arg(terminal_text({part.ref, terminal.terminal}).section(QLatin1Char(' '), 1), net));
     }
-    if (ends.size() == 2) words << QObject::tr("between %1 and %2").arg(ends[0], ends[1]);
-    else words << ends;
+    if (ends.size() == 2)
+        words << QObject::tr("between %1 and %2").arg(ends[0], ends[1]);
+    else
+        words << ends;
     return words.join(QStringLiteral(", "));
 }
 

@@ -35,7 +35,8 @@ void along_join(std::vector<QPointF>& points, const Drawing& drawing, int part, 
     const auto [join, start] = drawing.join_at(part, index(part, from));
     const auto [other_join, end] = drawing.join_at(next, index(next, to));
     if (join < 0 || join != other_join) return;
-    const std::vector<QPointF> way = sheet_points(way_between(drawing.joins()[static_cast<std::size_t>(join)].route, start, end));
+    const std::vector<QPointF> way =
+        sheet_points(way_between(drawing.joins()[static_cast<std::size_t>(join)].route, start, end));
     for (std::size_t i = 0; i < way.size(); ++i) {
         append(points, way[i]);
         if (i == 0) continue;

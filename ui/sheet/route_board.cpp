@@ -43,11 +43,16 @@ Board::Board(const Terrain& terrain, const std::vector<std::int16_t>& ids)
 
 int Board::edge(Cell c, Way way) const {
     switch (way) {
-    case Way::right: return at(c).across;
-    case Way::down: return at(c).down;
-    case Way::left: return window_.holds({c.x - 1, c.y}) ? at({c.x - 1, c.y}).across : -1;
-    case Way::up: return window_.holds({c.x, c.y - 1}) ? at({c.x, c.y - 1}).down : -1;
-    case Way::any: break;
+    case Way::right:
+        return at(c).across;
+    case Way::down:
+        return at(c).down;
+    case Way::left:
+        return window_.holds({c.x - 1, c.y}) ? at({c.x - 1, c.y}).across : -1;
+    case Way::up:
+        return window_.holds({c.x, c.y - 1}) ? at({c.x, c.y - 1}).down : -1;
+    case Way::any:
+        break;
     }
     return -1;
 }
@@ -55,7 +60,8 @@ int Board::edge(Cell c, Way way) const {
 void Board::draw(const Route& route, std::int16_t id) {
     for (const Run& run : route.runs)
         for (std::size_t i = 1; i < run.corners.size(); ++i) {
-            const Cell a = std::min(run.corners[i - 1], run.corners[i]), b = std::max(run.corners[i - 1], run.corners[i]);
+            const Cell a = std::min(run.corners[i - 1], run.corners[i]),
+                       b = std::max(run.corners[i - 1], run.corners[i]);
             for (int x = a.x; x < b.x; ++x) use({x, a.y}).across = id;
             for (int y = a.y; y < b.y; ++y) use({a.x, y}).down = id;
         }

@@ -9,7 +9,7 @@ namespace sinewright::ui {
 namespace {
 // Costs in tenths of a grid step. A bend is worth a detour of two and a half steps, a crossing of four.
 constexpr int step_cost = 10, bend_cost = 25, crossing_cost = 40, junction_cost = 6, near_body_cost = 2;
-constexpr int reserved_cost = 35;                         // before another net's pin: leave its way out free
+constexpr int reserved_cost = 35;                          // before another net's pin: leave its way out free
 constexpr int through_body_cost = 400, overlap_cost = 600; // only where no free way is left
 constexpr int window_margin = 6, wide_margin = 48;
 
@@ -111,8 +111,10 @@ struct RouteSearch::Tree {
             if (use.reserved >= 0 && use.reserved != id) cost += reserved_cost;
         }
         const Others there = others(to, way);
-        if (there == Others::passable && !is_goal) cost += crossing_cost;
-        else if (there != Others::none && !bar(overlap_cost)) return std::nullopt;
+        if (there == Others::passable && !is_goal)
+            cost += crossing_cost;
+        else if (there != Others::none && !bar(overlap_cost))
+            return std::nullopt;
         return cost;
     }
 };
@@ -141,7 +143,8 @@ bool RouteSearch::find(Tree& tree, const Pin& goal, std::vector<Cell>& path, int
         const auto entering = tree.enter(from, way, to, is_goal);
         if (!entering) return;
         int cost = cost_so_far + *entering;
-        if (is_goal && goal.out != Way::any && way != opposite(goal.out)) cost += way == goal.out ? 3 * bend_cost : bend_cost;
+        if (is_goal && goal.out != Way::any && way != opposite(goal.out))
+            cost += way == goal.out ? 3 * bend_cost : bend_cost;
         const int state = static_cast<int>(window.index(to)) * 4 + static_cast<int>(way);
         State& s = states_[static_cast<std::size_t>(state)];
         if (s.stamp == stamp_ && (s.closed || s.cost <= cost)) return;
@@ -160,7 +163,9 @@ bool RouteSearch::find(Tree& tree, const Pin& goal, std::vector<Cell>& path, int
             const Way way = static_cast<Way>(w);
             const Tree::Others there = tree.others(c, way);
             if (there != Tree::Others::none && !tree.strained) continue; // no junction on a crossing
-            const int bend = heading == Way::any || way == heading ? 0 : way == opposite(heading) ? 3 * bend_cost : bend_cost;
+            const int bend = heading == Way::any || way == heading ? 0
+                             : way == opposite(heading)            ? 3 * bend_cost
+                                                                   : bend_cost;
             offer(c, way, start + bend, source);
         }
     }
@@ -176,7 +181,8 @@ bool RouteSearch::find(Tree& tree, const Pin& goal, std::vector<Cell>& path, int
             total += s.cost;
             path.assign(1, here);
             int before = s.before;
-            for (; before >= 0; before = states_[static_cast<std::size_t>(before)].before) path.push_back(cell_of(before));
+            for (; before >= 0; before = states_[static_cast<std::size_t>(before)].before)
+                path.push_back(cell_of(before));
             path.push_back(cell_of((-2 - before) * 4));
             std::reverse(path.begin(), path.end());
             return true;

@@ -7,11 +7,16 @@ namespace sinewright::ui {
 
 Cell stepped(Cell from, Way way, int steps) {
     switch (way) {
-    case Way::right: return {from.x + steps, from.y};
-    case Way::down: return {from.x, from.y + steps};
-    case Way::left: return {from.x - steps, from.y};
-    case Way::up: return {from.x, from.y - steps};
-    case Way::any: break;
+    case Way::right:
+        return {from.x + steps, from.y};
+    case Way::down:
+        return {from.x, from.y + steps};
+    case Way::left:
+        return {from.x - steps, from.y};
+    case Way::up:
+        return {from.x, from.y - steps};
+    case Way::any:
+        break;
     }
     return from;
 }
@@ -161,9 +166,8 @@ const std::vector<Route>& Router::lay(const Terrain& terrain) {
     for (const WantedNet& net : terrain.nets) m.order.push_back(net.name);
 
     const auto touched = [&](const Grown& grown) {
-        return std::any_of(changed.begin(), changed.end(), [&](Cell c) {
-            return grown.window.holds(c) && grown.looked[grown.window.index(c)];
-        });
+        return std::any_of(changed.begin(), changed.end(),
+                           [&](Cell c) { return grown.window.holds(c) && grown.looked[grown.window.index(c)]; });
     };
     searched_ = 0;
     for (std::size_t round = 0; round < Memory::rounds; ++round)

@@ -1,6 +1,7 @@
 #pragma once
-/// Finds the runs of the joins: horizontal and vertical, round the parts, few bends and crossings. Plain integers, no Qt.
-/// The drawing is a function of what is asked alone: the same terrain gives the same routes, whatever was drawn before.
+/// Finds the runs of the joins: horizontal and vertical, round the parts, few bends and crossings. Plain integers, no
+/// Qt. The drawing is a function of what is asked alone: the same terrain gives the same routes, whatever was drawn
+/// before.
 #include <compare>
 #include <cstdint>
 #include <memory>

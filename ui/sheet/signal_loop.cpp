@@ -15,22 +15,22 @@ struct Way {
     bool amplifies;
 };
 constexpr Way table[] = {
-    {"opamp", "plus", "out", 1, true},      {"opamp", "minus", "out", 1, true},
-    {"limiter", "in", "out", 1, true},      {"multiplier", "x", "out", 2, true},
-    {"multiplier", "y", "out", 3, true},    {"jfet", "g", "d", 4, true},
-    {"jfet", "g", "s", 4, true},            {"jfet", "s", "d", 5, true},
-    {"jfet", "d", "s", 5, false},           {"resistor", "a", "b", 3, false},
-    {"resistor", "b", "a", 3, false},       {"capacitor", "a", "b", 3, false},
-    {"capacitor", "b", "a", 3, false},      {"inductor", "a", "b", 3, false},
-    {"inductor", "b", "a", 3, false},       {"potentiometer", "a", "w", 3, false},
-    {"potentiometer", "w", "a", 3, false},  {"potentiometer", "b", "w", 3, false},
-    {"potentiometer", "w", "b", 3, false},  {"potentiometer", "a", "b", 5, false},
-    {"potentiometer", "b", "a", 5, false},  {"lamp", "a", "b", 4, false},
-    {"lamp", "b", "a", 4, false},           {"thermistor", "a", "b", 4, false},
-    {"thermistor", "b", "a", 4, false},     {"photocell", "a", "b", 4, false},
-    {"photocell", "b", "a", 4, false},      {"diode", "a", "k", 7, false},
-    {"diode", "k", "a", 7, false},          {"zener", "a", "k", 7, false},
-    {"zener", "k", "a", 7, false},          {"servo", "sense", "control", 9, true},
+    {"opamp", "plus", "out", 1, true},     {"opamp", "minus", "out", 1, true},
+    {"limiter", "in", "out", 1, true},     {"multiplier", "x", "out", 2, true},
+    {"multiplier", "y", "out", 3, true},   {"jfet", "g", "d", 4, true},
+    {"jfet", "g", "s", 4, true},           {"jfet", "s", "d", 5, true},
+    {"jfet", "d", "s", 5, false},          {"resistor", "a", "b", 3, false},
+    {"resistor", "b", "a", 3, false},      {"capacitor", "a", "b", 3, false},
+    {"capacitor", "b", "a", 3, false},     {"inductor", "a", "b", 3, false},
+    {"inductor", "b", "a", 3, false},      {"potentiometer", "a", "w", 3, false},
+    {"potentiometer", "w", "a", 3, false}, {"potentiometer", "b", "w", 3, false},
+    {"potentiometer", "w", "b", 3, false}, {"potentiometer", "a", "b", 5, false},
+    {"potentiometer", "b", "a", 5, false}, {"lamp", "a", "b", 4, false},
+    {"lamp", "b", "a", 4, false},          {"thermistor", "a", "b", 4, false},
+    {"thermistor", "b", "a", 4, false},    {"photocell", "a", "b", 4, false},
+    {"photocell", "b", "a", 4, false},     {"diode", "a", "k", 7, false},
+    {"diode", "k", "a", 7, false},         {"zener", "a", "k", 7, false},
+    {"zener", "k", "a", 7, false},         {"servo", "sense", "control", 9, true},
 };
 
 struct Edge {
@@ -54,7 +54,8 @@ Graph graph_of(const Design& design) {
             for (const TerminalNet& t : part.terminals)
                 if (t.net) dead.push_back(*t.net);
     for (const std::string& net : nets_of(design))
-        if (std::find(dead.begin(), dead.end(), net) == dead.end()) graph.nets.emplace(net, static_cast<int>(graph.nets.size()));
+        if (std::find(dead.begin(), dead.end(), net) == dead.end())
+            graph.nets.emplace(net, static_cast<int>(graph.nets.size()));
     graph.leaving.resize(graph.nets.size());
     const auto live = [&](const std::optional<std::string>& net) {
         const auto found = net ? graph.nets.find(*net) : graph.nets.end();

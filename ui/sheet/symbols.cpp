@@ -19,24 +19,43 @@ const std::array symbols{
     Symbol{"resistor", "R", centred(56, 22), in_line("a", "b"), forms::resistor},
     Symbol{"capacitor", "C", centred(12, 34), in_line("a", "b"), forms::capacitor},
     Symbol{"inductor", "L", {-28, -12, 56, 16}, in_line("a", "b"), forms::inductor},
-    Symbol{"potentiometer", "pot", centred(56, 22),
-           {{"a", {-2, 0}, Way::left}, {"w", {0, -2}, Way::up}, {"b", {2, 0}, Way::right}}, forms::potentiometer},
-    Symbol{"opamp", "op-amp", centred(110, 112),
-           {{"plus", {-4, -2}, Way::left}, {"minus", {-4, 2}, Way::left}, {"out", {4, 0}, Way::right}}, forms::opamp, true},
+    Symbol{"potentiometer",
+           "pot",
+           centred(56, 22),
+           {{"a", {-2, 0}, Way::left}, {"w", {0, -2}, Way::up}, {"b", {2, 0}, Way::right}},
+           forms::potentiometer},
+    Symbol{"opamp",
+           "op-amp",
+           centred(110, 112),
+           {{"plus", {-4, -2}, Way::left}, {"minus", {-4, 2}, Way::left}, {"out", {4, 0}, Way::right}},
+           forms::opamp,
+           true},
     Symbol{"limiter", "limiter", centred(48, 48), in_line("in", "out"), forms::limiter},
     Symbol{"diode", "diode", centred(24, 24), in_line("a", "k"), forms::diode},
     Symbol{"zener", "zener", centred(24, 24), in_line("a", "k"), forms::zener},
     Symbol{"lamp", "lamp", centred(38, 38), in_line("a", "b"), forms::lamp},
     Symbol{"thermistor", "bead", {-32, -18, 64, 38}, in_line("a", "b"), forms::thermistor},
-    Symbol{"jfet", "FET", {-14, -22, 38, 44},
-           {{"d", {1, -2}, Way::up}, {"g", {-2, 0}, Way::left}, {"s", {1, 2}, Way::down}}, forms::jfet},
-    Symbol{"photocell", "cell", centred(88, 72),
-           {{"anode", {-3, -1}, Way::left}, {"cathode", {-3, 1}, Way::left}, {"a", {3, -1}, Way::right}, {"b", {3, 1}, Way::right}},
+    Symbol{"jfet",
+           "FET",
+           {-14, -22, 38, 44},
+           {{"d", {1, -2}, Way::up}, {"g", {-2, 0}, Way::left}, {"s", {1, 2}, Way::down}},
+           forms::jfet},
+    Symbol{"photocell",
+           "cell",
+           centred(88, 72),
+           {{"anode", {-3, -1}, Way::left},
+            {"cathode", {-3, 1}, Way::left},
+            {"a", {3, -1}, Way::right},
+            {"b", {3, 1}, Way::right}},
            forms::photocell},
-    Symbol{"multiplier", "multiplier", centred(72, 72),
-           {{"x", {-3, -1}, Way::left}, {"y", {-3, 1}, Way::left}, {"out", {3, 0}, Way::right}}, forms::multiplier},
+    Symbol{"multiplier",
+           "multiplier",
+           centred(72, 72),
+           {{"x", {-3, -1}, Way::left}, {"y", {-3, 1}, Way::left}, {"out", {3, 0}, Way::right}},
+           forms::multiplier},
     Symbol{"servo", "servo", centred(72, 56), in_line("sense", "control", 3), forms::servo},
-    Symbol{"supply", "supply", centred(36, 12), {{"plus", {0, -2}, Way::up}, {"minus", {0, 2}, Way::down}}, forms::supply},
+    Symbol{
+        "supply", "supply", centred(36, 12), {{"plus", {0, -2}, Way::up}, {"minus", {0, 2}, Way::down}}, forms::supply},
 };
 
 void unknown_box(SymbolPen& pen) { pen.box(centred(56, 56)), pen.mark({0, 0}, QStringLiteral("?"), 17); }
@@ -51,9 +70,13 @@ const Symbol& symbol_of(std::string_view kind) {
     return found == symbols.end() ? unknown : *found;
 }
 
-SymbolPen::SymbolPen(QPainter& painter, const Theme& theme, const QColor& ink, double line_px, const QTransform& upright,
-                     double smallest_mark_px)
-    : painter_(painter), theme_(theme), ink_(ink), line_px_(line_px), upright_(upright),
+SymbolPen::SymbolPen(QPainter& painter, const Theme& theme, const QColor& ink, double line_px,
+                     const QTransform& upright, double smallest_mark_px)
+    : painter_(painter),
+      theme_(theme),
+      ink_(ink),
+      line_px_(line_px),
+      upright_(upright),
       smallest_mark_px_(smallest_mark_px) {}
 
 void SymbolPen::set(double times, bool filled) {
@@ -61,7 +84,17 @@ void SymbolPen::set(double times, bool filled) {
     painter_.setBrush(filled ? QBrush(theme_.raised) : QBrush(Qt::NoBrush));
 }
 
-void SymbolPen::lead(QPointF from, QPointF to) { line(from, to); }
+void SymbolPen::lead(QPointF from, QPointF to) {
+    const double length = std::hypot(to.x() - from.x(), to.y() - from.y());
+    for (const QPointF& tip : cut_tips_) {
+        const QPointF step = (to - from) * (lead_cut_px / length);
+        if (tip == from)
+            from += step;
+        else if (tip == to)
+            to -= step;
+    }
+    line(from, to);
+}
 
 void SymbolPen::line(QPointF from, QPointF to, double times) {
     set(times, false);

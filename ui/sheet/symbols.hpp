@@ -11,6 +11,7 @@
 namespace sinewright::ui {
 
 inline constexpr int grid_px = 20; ///< sheet units to a grid step
+inline constexpr int lead_cut_px = 10;
 
 /// Draws in one symbol's own coordinates: ink lines, paper fills, and marks that stay upright when the part is turned.
 class SymbolPen {
@@ -18,6 +19,8 @@ class SymbolPen {
     /// @param upright  undoes the part's turn and flip, for marks
     SymbolPen(QPainter& painter, const Theme& theme, const QColor& ink, double line_px, const QTransform& upright = {},
               double smallest_mark_px = 0);
+    /// Leads to these tips end `lead_cut_px` early: the join draws the rest, to round its corner.
+    void cut_leads(std::vector<QPointF> tips) { cut_tips_ = std::move(tips); }
     void lead(QPointF from, QPointF to);
     void line(QPointF from, QPointF to, double times = 1);
     void bar(QPointF from, QPointF to) { line(from, to, 1.25); }
@@ -35,12 +38,13 @@ class SymbolPen {
     double line_px_;
     QTransform upright_;
     double smallest_mark_px_;
+    std::vector<QPointF> cut_tips_;
 };
 
 struct Port {
     std::string_view terminal;
-    Cell at;  ///< grid steps from the part's centre, unturned
-    Way out;  ///< the way its lead points
+    Cell at; ///< grid steps from the part's centre, unturned
+    Way out; ///< the way its lead points
 };
 
 struct Symbol {

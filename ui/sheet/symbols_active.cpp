@@ -56,23 +56,24 @@ void zener(SymbolPen& pen) {
 
 void jfet(SymbolPen& pen) {
     pen.bar({0, -17}, {0, 17});
-    QPainterPath channel_ends(QPointF(20, -40));
-    channel_ends.lineTo(20, -11);
-    channel_ends.lineTo(0, -11);
-    channel_ends.moveTo(20, 40);
-    channel_ends.lineTo(20, 11);
-    channel_ends.lineTo(0, 11);
-    pen.shape(channel_ends);
+    for (const double side : {-1.0, 1.0}) {
+        pen.line({0, side * 11}, {20, side * 11});
+        pen.lead({20, side * 11}, {20, side * 40});
+    }
     pen.lead({-40, 0}, {0, 0});
     pen.arrow({-14, 0}, {-2, 0}, 8);
 }
 
 void photocell(SymbolPen& pen) {
     pen.box({-44, -36, 88, 72}, 8);
-    QPainterPath light(QPointF(-60, -20)); // the light-emitting diode, anode above
+    for (const double side : {-1.0, 1.0}) {
+        pen.lead({side * 60, -20}, {side * 44, -20});
+        pen.lead({side * 60, 20}, {side * 44, 20});
+    }
+    QPainterPath light(QPointF(-44, -20)); // the light-emitting diode, anode above
     light.lineTo(-24, -20);
     light.lineTo(-24, 20);
-    light.lineTo(-60, 20);
+    light.lineTo(-44, 20);
     pen.shape(light);
     QPainterPath emitter(QPointF(-33, -7));
     emitter.lineTo(-15, -7);
@@ -82,10 +83,10 @@ void photocell(SymbolPen& pen) {
     pen.bar({-33, 7}, {-15, 7});
     pen.arrow({-10, -6}, {4, -6}, 4.5);
     pen.arrow({-10, 3}, {4, 3}, 4.5);
-    QPainterPath cell(QPointF(60, -20));
+    QPainterPath cell(QPointF(44, -20));
     cell.lineTo(20, -20);
     cell.lineTo(20, 20);
-    cell.lineTo(60, 20);
+    cell.lineTo(44, 20);
     pen.shape(cell);
     pen.box({12, -14, 16, 28}, 2);
 }

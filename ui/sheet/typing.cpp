@@ -15,14 +15,15 @@ struct Candidate {
     double usual_from, usual_to;
 };
 constexpr Candidate candidates[] = {
-    {"resistor", 0.99, 1e9},     {"capacitor", 0.9e-12, 0.1e-3}, {"inductor", 1e-7, 100}, {"supply", 1, 100},
-    {"potentiometer", 100, 1e7}, {"zener", 2, 200},
+    {"resistor", 0.99, 1e9}, {"capacitor", 0.9e-12, 0.1e-3}, {"inductor", 1e-7, 100},
+    {"supply", 1, 100},      {"potentiometer", 100, 1e7},    {"zener", 2, 200},
 };
 
 QString words_for(std::string_view kind, const QString& value) {
     const PartKind* known = find_part_kind(kind);
     const std::string_view title = known ? known->title : kind;
-    return QString::fromUtf8(title.data(), static_cast<qsizetype>(title.size())) + (value.isEmpty() ? QString() : QLatin1Char(' ') + value);
+    return QString::fromUtf8(title.data(), static_cast<qsizetype>(title.size())) +
+           (value.isEmpty() ? QString() : QLatin1Char(' ') + value);
 }
 
 std::optional<Value> value_for(std::string_view kind, const std::string& text) {
@@ -54,10 +55,14 @@ void add_words(const QString& typed, std::vector<Meaning>& meanings) {
     if (word.isEmpty() || !word.front().isLetter()) return;
     std::vector<Meaning> later;
     for (const PartKind* kind : part_kinds()) {
-        const auto text = [](std::string_view s) { return QString::fromUtf8(s.data(), static_cast<qsizetype>(s.size())).toLower(); };
+        const auto text = [](std::string_view s) {
+            return QString::fromUtf8(s.data(), static_cast<qsizetype>(s.size())).toLower();
+        };
         const QString names[] = {text(kind->name), text(kind->title), text(symbol_of(kind->name).tile)};
-        const bool begins = std::any_of(std::begin(names), std::end(names), [&](const QString& n) { return n.startsWith(word); });
-        const bool holds = word.size() > 2 && std::any_of(std::begin(names), std::end(names), [&](const QString& n) { return n.contains(word); });
+        const bool begins =
+            std::any_of(std::begin(names), std::end(names), [&](const QString& n) { return n.startsWith(word); });
+        const bool holds = word.size() > 2 && std::any_of(std::begin(names), std::end(names),
+                                                          [&](const QString& n) { return n.contains(word); });
         if (!begins && !holds) continue;
         std::optional<Value> value;
         if (!rest.isEmpty() && !(value = value_for(kind->name, rest.toStdString()))) continue;
