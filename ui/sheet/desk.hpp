@@ -20,7 +20,7 @@ struct Hit {
 class Desk {
   public:
     using Change = std::function<void(Design&)>;
-    Desk(Document& document, Analyst& analyst) : document(document), analyst(analyst) {}
+    Desk(Document& of, Analyst& with) : document(of), analyst(with) {}
 
     Document& document;
     Analyst& analyst;

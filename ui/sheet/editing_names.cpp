@@ -23,8 +23,11 @@ std::string free_net(const Design& design) {
     for (const std::string& net : nets_of(design)) used.insert(net);
     for (const Label& label : design.labels) used.insert(label.net);
     used.insert(design.output);
-    for (int i = 1;; ++i)
-        if (std::string net = "n" + std::to_string(i); !used.contains(net)) return net;
+    for (int i = 1;; ++i) {
+        std::string net(1, 'n');
+        net += std::to_string(i);
+        if (!used.contains(net)) return net;
+    }
 }
 
 std::optional<std::string> net_of(const Design& design, const TerminalRef& terminal) {

@@ -95,10 +95,10 @@ void SheetView::copy_selection() {
     if (refs.empty()) return;
     Design laid = desk_.document.design();
     for (std::size_t p = 0; p < laid.parts.size(); ++p) laid.parts[p].place = desk_.part(static_cast<int>(p)).place;
-    auto* data = new QMimeData;
+    auto* mime = new QMimeData;
     const std::string text = design_text(excerpt(laid, refs));
-    data->setData(QLatin1String(parts_mime), QByteArray::fromStdString(text));
-    QApplication::clipboard()->setMimeData(data);
+    mime->setData(QLatin1String(parts_mime), QByteArray::fromStdString(text));
+    QApplication::clipboard()->setMimeData(mime);
 }
 
 void SheetView::cut_selection() {
@@ -109,12 +109,12 @@ void SheetView::cut_selection() {
 }
 
 void SheetView::paste() {
-    const QMimeData* data = QApplication::clipboard()->mimeData();
-    if (!data || !data->hasFormat(QLatin1String(parts_mime))) {
+    const QMimeData* mime = QApplication::clipboard()->mimeData();
+    if (!mime || !mime->hasFormat(QLatin1String(parts_mime))) {
         emit message(tr("There are no parts to paste."));
         return;
     }
-    const auto read = parse_design(data->data(QLatin1String(parts_mime)).toStdString(), "clipboard");
+    const auto read = parse_design(mime->data(QLatin1String(parts_mime)).toStdString(), "clipboard");
     if (!read || read->design.parts.empty()) return;
     QRectF box;
     for (const Part& part : read->design.parts) box |= shape_of(part, place_of(part, {})).reach();
