@@ -31,7 +31,9 @@ bool meets(Cell a, Cell b, const Box& box) {
 /// A part in one of its orientations, about its centre.
 struct Form {
     Place turned;
-    Box body{};
+    Box body{};  ///< what runs go round
+    Box whole{}; ///< with the leads
+    Box roomy{}; ///< with room for texts and runs
     std::vector<Pin> pins;
 };
 struct Piece {
@@ -41,7 +43,8 @@ struct Piece {
     Cell at;
     int form = 0;
     const Form& now() const { return forms[static_cast<std::size_t>(form)]; }
-    Box box() const { return now().body.moved(at); }
+    Box body() const { return now().body.moved(at); }
+    Box whole() const { return now().whole.moved(at); }
     Pin pin(std::size_t i) const {
         const Pin& p = now().pins[i];
         return {{p.at.x + at.x, p.at.y + at.y}, p.out};
@@ -55,7 +58,10 @@ struct End {
 std::vector<Place> orientations(const Symbol& symbol) {
     const Place upright{}, mirrored{0, 0, 0, true}, upside_down{0, 0, 180, true};
     if (symbol.kind == "opamp") return {upright, upside_down};
-    if (symbol.ports.size() == 2 && symbol.ports[0].out != Way::up && symbol.body.width() < 60)
+    const bool one_way =
+        !symbol.ports.empty() && (symbol.ports[0].terminal == "in" || symbol.ports[0].terminal == "sense");
+    if (one_way) return {upright, mirrored};
+    if (symbol.ports.size() == 2 && symbol.ports[0].out != Way::up)
         return {upright, {0, 0, 90, false}, {0, 0, 180, false}, {0, 0, 270, false}};
     if (symbol.kind == "supply") return {upright, {0, 0, 180, false}};
     if (symbol.ports.size() == 3 && symbol.body.width() < 60) {
@@ -68,16 +74,27 @@ std::vector<Place> orientations(const Symbol& symbol) {
 }
 
 Form form_of(const Symbol& symbol, const Place& turned) {
-    Part bare;
-    PartShape shape = shape_of(bare, turned);
-    Form form{turned, {0, 0, 0, 0}, {}};
+    Form form{turned, {}, {}, {}, {}};
     QTransform transform;
     transform.rotate(turned.turn);
     transform.scale(turned.flip ? -1 : 1, 1);
-    for (Cell c : cells_under(transform.mapRect(symbol.body)))
-        form.body = {std::min(form.body.left, c.x), std::min(form.body.top, c.y), std::max(form.body.right, c.x),
-                     std::max(form.body.bottom, c.y)};
-    for (const Port& port : symbol.ports) form.pins.push_back({oriented(port.at, turned), oriented(port.out, turned)});
+    const auto take = [](Box& box, Cell c) {
+        box = {std::min(box.left, c.x), std::min(box.top, c.y), std::max(box.right, c.x), std::max(box.bottom, c.y)};
+    };
+    for (Cell c : cells_under(transform.mapRect(symbol.body))) take(form.body, c);
+    form.whole = form.body;
+    for (const Port& port : symbol.ports) {
+        form.pins.push_back({oriented(port.at, turned), oriented(port.out, turned)});
+        take(form.whole, form.pins.back().at);
+    }
+    const bool upright = form.whole.bottom - form.whole.top > form.whole.right - form.whole.left;
+    form.roomy = form.whole.grown(1); // and room for the text: beside an upright part, above a level one
+    if (upright && symbol.ports.size() == 2)
+        form.roomy.right += 2;
+    else if (!symbol.has_face)
+        form.roomy.top -= 1;
+    else
+        form.roomy.bottom += 1;
     return form;
 }
 
@@ -180,7 +197,7 @@ void Arrangement::rows() {
     bool any_fixed = false;
     for (const Piece& piece : pieces_)
         if (piece.fixed)
-            bottom = any_fixed ? std::max(bottom, piece.box().bottom) : piece.box().bottom, any_fixed = true;
+            bottom = any_fixed ? std::max(bottom, piece.whole().bottom) : piece.whole().bottom, any_fixed = true;
     const int columns = std::max(3, static_cast<int>(std::lround(std::sqrt(double(pieces_.size()) * 1.3))));
     int place = 0;
     for (const std::size_t index : signal_order()) {
@@ -197,7 +214,7 @@ int Arrangement::run_cost(const Pin& a, const Pin& b) const {
     const Cell corner_1{b.at.x, a.at.y}, corner_2{a.at.x, b.at.y};
     int hits_1 = 0, hits_2 = 0;
     for (const Piece& piece : pieces_) {
-        const Box box = piece.box();
+        const Box box = piece.body();
         hits_1 += meets(a.at, corner_1, box) + meets(corner_1, b.at, box);
         hits_2 += meets(a.at, corner_2, box) + meets(corner_2, b.at, box);
     }
@@ -236,21 +253,21 @@ int Arrangement::crowding() const {
     int total = 0;
     Box all{INT_MAX, INT_MAX, INT_MIN, INT_MIN};
     for (std::size_t i = 0; i < pieces_.size(); ++i) {
-        const Box box = pieces_[i].box();
+        const Box box = pieces_[i].whole(), roomy = pieces_[i].now().roomy.moved(pieces_[i].at);
         all = {std::min(all.left, box.left), std::min(all.top, box.top), std::max(all.right, box.right),
                std::max(all.bottom, box.bottom)};
         for (std::size_t j = i + 1; j < pieces_.size(); ++j) {
-            const Box other = pieces_[j].box();
-            if (const int near = shared_area(box.grown(1), other.grown(1))) total += near * crowd_cost;
-            if (const int both = shared_area(box, other)) total += both * overlap_cost;
+            if (const int near = shared_area(roomy, pieces_[j].now().roomy.moved(pieces_[j].at)))
+                total += near * crowd_cost;
+            if (const int both = shared_area(box, pieces_[j].whole())) total += both * overlap_cost;
         }
         for (std::size_t p = 0; p < pieces_[i].nets.size(); ++p) {
             if (pieces_[i].nets[p] != -2) continue;
             const Pin pin = pieces_[i].pin(p);
-            total += pin.out == Way::down ? 0 : pin.out == Way::up ? 120 : 60;
+            total += pin.out == Way::down ? 0 : pin.out == Way::up ? 200 : 130;
             const Cell foot = stepped(pin.at, pin.out, 2);
             for (std::size_t j = 0; j < pieces_.size(); ++j)
-                if (j != i && meets(pin.at, foot, pieces_[j].box())) total += overlap_cost;
+                if (j != i && meets(pin.at, foot, pieces_[j].whole())) total += overlap_cost;
         }
     }
     return total + 3 * (all.right - all.left) + 5 * (all.bottom - all.top);

@@ -85,25 +85,31 @@ std::pair<int, int> Drawing::join_at(int part, int port) const {
     return {-1, -1};
 }
 
-/// To the right of the net's right-most terminal, past whatever stands in that row.
+/// To the right of one of the net's terminals, where the ring and its name lie on nothing.
 Cell Drawing::room_for_output(const std::string& net) const {
-    Cell from{INT_MIN, 0};
+    int right = INT_MIN;
+    std::vector<PlacedPort> ends;
     for (const PartShape& part : parts_)
         for (const PlacedPort& port : part.ports)
-            if (port.net == net && (port.at.x > from.x || (port.at.x == from.x && port.out == Way::right)))
-                from = port.at;
-    if (from.x == INT_MIN) return {0, 0};
-    Cell at{from.x + 3, from.y};
-    for (bool moved = true; moved;) {
-        moved = false;
-        const QRectF wanted(sheet_point(at) + QPointF(-30, -12), QSizeF(30.0 + name_cells(net) * grid_px, 24));
-        for (const PartShape& part : parts_)
-            if (part.reach().adjusted(-4, -4, 4, 4).intersects(wanted)) {
-                const int past = static_cast<int>(std::ceil(part.reach().right() / grid_px)) + 3;
-                if (past > at.x) at.x = past, moved = true;
+            if (port.net == net) ends.push_back(port), right = std::max(right, port.at.x);
+    const auto free = [&](Cell at) {
+        const QRectF wanted(sheet_point(at) + QPointF(-16, -14), QSizeF(16.0 + name_cells(net) * grid_px, 28));
+        return std::none_of(parts_.begin(), parts_.end(), [&](const PartShape& part) {
+            return part.reach().adjusted(-4, -4, 4, 4).intersects(wanted);
+        });
+    };
+    Cell best = ends.empty() ? Cell{} : Cell{right + 3, ends.front().at.y};
+    int least = INT_MAX;
+    for (const PlacedPort& end : ends)
+        for (int dx = 2; dx <= 12; ++dx)
+            for (int dy = -6; dy <= 6; ++dy) {
+                const Cell at{end.at.x + dx, end.at.y + dy};
+                const int turned = end.out == Way::right || dy == 0 ? 0 : 1;
+                const int cost = std::abs(dx - 3) * 2 + std::abs(dy) * 3 + (dy != 0 ? 4 : 0) + turned +
+                                 2 * std::max(0, right - at.x + 3);
+                if (cost < least && free(at)) least = cost, best = at;
             }
-    }
-    return at;
+    return best;
 }
 
 void Drawing::set_flags(const Design& design, const Theme& theme) {

@@ -65,10 +65,9 @@ bool is_ideal(const Part& part) {
 
 const ParameterInfo* shown_parameter(const Part& part) {
     const PartKind* kind = find_part_kind(part.kind);
-    if (!kind) return nullptr;
-    int index = part.kind == "opamp" ? kind->parameter("gbw") : kind->main; // an amplifier is known by its speed
-    if (part.kind == "diode") index = -1; // its saturation current tells nobody anything
-    return index < 0 ? nullptr : &kind->parameters[static_cast<std::size_t>(index)];
+    // The saturation current of a diode and the sensitivity of a cell are nothing to read off a drawing.
+    if (!kind || kind->main < 0 || part.kind == "diode" || part.kind == "photocell") return nullptr;
+    return &kind->parameters[static_cast<std::size_t>(kind->main)];
 }
 
 QString value_text(const Part& part) {
@@ -77,6 +76,8 @@ QString value_text(const Part& part) {
     const Value* value = parameter ? number_of(part, parameter->name) : nullptr;
     if (!value) return {};
     if (has_letter_code(parameter->unit)) return code_of(value->si, parameter->unit);
+    if (parameter->unit.empty() || parameter->unit.starts_with("1/"))
+        return QStringLiteral("×") + QString::number(value->si, 'g', 3);
     return QString::fromStdString(si_text(value->si, parameter->unit, 3));
 }
 

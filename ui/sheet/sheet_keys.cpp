@@ -176,7 +176,7 @@ void SheetView::open_typed(const QString& first) {
 void SheetView::edit_value(int part) {
     const Part& what = desk_.document.design().parts[static_cast<std::size_t>(part)];
     if (!shown_parameter(what)) {
-        emit message(tr("%1 has no single value; its parameters stand in the panel.").arg(text_of(what.ref)));
+        emit message(tr("%1 has no single value to type.").arg(text_of(what.ref)));
         return;
     }
     desk_.document.end_merge();
