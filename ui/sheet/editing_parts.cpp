@@ -76,16 +76,24 @@ bool chosen(const std::vector<std::string>& refs, const std::string& ref) {
     return std::find(refs.begin(), refs.end(), ref) != refs.end();
 }
 
-/// Middle of the parts' places, on the grid.
-QPointF middle(const Design& design, const std::vector<std::string>& refs) {
+/// The place of the part nearest the parts' middle: turning and flipping about it is undone by turning back.
+QPointF pivot(const Design& design, const std::vector<std::string>& refs) {
     QPointF low(std::numeric_limits<double>::max(), std::numeric_limits<double>::max()), high = -low;
+    std::vector<QPointF> places;
     for (const Part& part : design.parts) {
         if (!chosen(refs, part.ref)) continue;
         const Place place = place_of(part, {});
+        places.emplace_back(place.x, place.y);
         low = {std::min(low.x(), place.x), std::min(low.y(), place.y)};
         high = {std::max(high.x(), place.x), std::max(high.y(), place.y)};
     }
-    return sheet_point(nearest_cell((low + high) / 2));
+    const auto off_middle = [&](QPointF p) {
+        const QPointF d = 2 * p - (low + high);
+        return QPointF::dotProduct(d, d);
+    };
+    const auto nearest = std::min_element(places.begin(), places.end(),
+                                          [&](QPointF a, QPointF c) { return off_middle(a) < off_middle(c); });
+    return nearest == places.end() ? QPointF() : *nearest;
 }
 
 template <class F> void each_place(Design& design, const std::vector<std::string>& refs, F&& change) {
@@ -145,7 +153,7 @@ void move_parts(Design& design, const std::vector<std::string>& refs, double dx,
 }
 
 void turn_parts(Design& design, const std::vector<std::string>& refs, int quarters) {
-    const QPointF about = middle(design, refs);
+    const QPointF about = pivot(design, refs);
     for (int i = 0; i < ((quarters % 4) + 4) % 4; ++i)
         each_place(design, refs, [&](Place& place) {
             const QPointF from(place.x - about.x(), place.y - about.y());
@@ -155,7 +163,7 @@ void turn_parts(Design& design, const std::vector<std::string>& refs, int quarte
 }
 
 void flip_parts(Design& design, const std::vector<std::string>& refs, bool upside_down) {
-    const QPointF about = middle(design, refs);
+    const QPointF about = pivot(design, refs);
     each_place(design, refs, [&](Place& place) {
         if (upside_down)
             place.y = 2 * about.y() - place.y;

@@ -60,7 +60,7 @@ Terrain random_terrain(unsigned seed, int columns, int rows) {
     for (std::size_t i = 0, net = 0; i + 3 < pins.size(); ++net) {
         const std::size_t size = 2 + random() % 2;
         terrain.nets.push_back(
-            {"n" + std::to_string(net),
+            {std::to_string(net),
              {pins.begin() + static_cast<std::ptrdiff_t>(i), pins.begin() + static_cast<std::ptrdiff_t>(i + size)}});
         i += size;
     }
