@@ -49,7 +49,7 @@ const std::array symbols{
             {"b", {3, 1}, Way::right}},
            forms::photocell},
     Symbol{"multiplier",
-           "multiplier",
+           "times",
            centred(72, 72),
            {{"x", {-3, -1}, Way::left}, {"y", {-3, 1}, Way::left}, {"out", {3, 0}, Way::right}},
            forms::multiplier},

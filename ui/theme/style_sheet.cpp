@@ -33,8 +33,25 @@ QLineEdit[role="title"] { background: transparent; border: 1px solid transparent
     padding: 4px 6px; }
 QLineEdit[role="title"]:hover { border-color: {line}; }
 QLineEdit[role="title"]:focus { background: {raised}; border: 1px solid {accent}; }
-QLineEdit[role="pill"] { border-radius: 23px; padding: 4px 18px; }
-QComboBox::drop-down { border: none; width: 18px; }
+QLineEdit[role="pill"] { border-radius: 23px; padding: 4px 14px; }
+QLineEdit[role="flat"], QLineEdit[role="flat-value"], QLineEdit[role="flat-small"] { background: transparent;
+    border: 1px solid transparent; border-radius: 4px; padding: 1px 3px; min-height: 16px; }
+QLineEdit[role="flat"] { color: {soft}; }
+QLineEdit[role="flat-value"] { font-weight: 600; }
+QLineEdit[role="flat-small"] { color: {faint}; font-size: {axis}; min-height: 12px; }
+QLineEdit[role="flat"]:hover, QLineEdit[role="flat-value"]:hover, QLineEdit[role="flat-small"]:hover {
+    border-color: {line}; }
+QLineEdit[role="flat"]:focus, QLineEdit[role="flat-value"]:focus, QLineEdit[role="flat-small"]:focus {
+    border-color: {accent}; }
+QToolButton[role="flat-small"] { background: transparent; border: 1px solid transparent; color: {faint};
+    font-size: {axis}; padding: 0 4px; min-height: 12px; }
+QToolButton[role="flat-small"]:hover { border-color: {line}; }
+QToolButton[role="flat-small"]:focus { border-color: {accent}; }
+QToolButton[role="small"] { font-size: {axis}; padding: 1px 6px; min-height: 16px; border-radius: 4px; }
+QToolButton[role="fold"] { background: transparent; border: 1px solid transparent; padding: 0 6px; color: {soft}; }
+QToolButton[role="fold"]:focus { border-color: {accent}; }
+
+QComboBox::drop-down { border: none; width: 22px; }
 QComboBox QAbstractItemView { background: {raised}; border: 1px solid {line}; outline: none;
     selection-background-color: {meets_ground}; selection-color: {ink}; }
 
@@ -78,7 +95,9 @@ QListWidget::item:selected { background: {meets_ground}; color: {ink}; }
 
 QLabel { background: transparent; }
 QLabel[role="soft"], QLabel[role="note"] { color: {soft}; }
-QLabel[role="fault"] { color: {misses}; }
+QLabel[role="card-title"] { font-weight: 600; font-size: {note}; }
+QLabel[role="floating-note"] { background: {ink}; color: {sheet}; border-radius: 8px; padding: 7px 14px; }
+QLabel[role="fault"] { color: {misses}; font-size: {note}; }
 QFrame[role="card"] { background: {raised}; border: 1px solid {line}; border-radius: 10px; }
 QFrame[role="bar-fault"] { background: {misses_ground}; border: none; border-bottom: 1px solid {line}; }
 QFrame[role="bar-note"] { background: {meets_ground}; border: none; border-bottom: 1px solid {line}; }
@@ -104,6 +123,9 @@ QString style_sheet(const Theme& t) {
         {"misses_ground", &t.misses_ground},
     };
     for (const auto& [name, colour] : colours) text.replace(QString("{%1}").arg(name), colour->name());
+    // In points: a style sheet takes whole pixels only.
+    const auto points = [&](double px) { return QString("%1pt").arg(t.font(px).pointSizeF()); };
+    text.replace("{axis}", points(Theme::axis_px)).replace("{note}", points(Theme::note_px));
     return text;
 }
 
