@@ -100,9 +100,13 @@ int Desk::selected_part() const {
 }
 
 Hit Desk::hit(QPointF at, double reach_px) const {
-    if (overlay_.cut && (overlay_.cut->chip.contains(at) || distance(at, overlay_.cut->at) < 12)) return {Hit::On::cut};
+    if (overlay_.cut && overlay_.cut->chip.contains(at)) return {Hit::On::cut};
     Hit nearest;
     double least = reach_px;
+    if (overlay_.cut && distance(at, overlay_.cut->at) < least) {
+        least = distance(at, overlay_.cut->at);
+        nearest = {Hit::On::cut};
+    }
     for (std::size_t p = 0; p < drawing_.parts().size(); ++p)
         for (std::size_t t = 0; t < drawing_.parts()[p].ports.size(); ++t)
             if (const double d = distance(at, sheet_point(drawing_.parts()[p].ports[t].at)); d < least) {

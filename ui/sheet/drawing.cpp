@@ -104,7 +104,7 @@ Cell Drawing::room_for_output(const std::string& net) const {
         for (int dx = 2; dx <= 12; ++dx)
             for (int dy = -6; dy <= 6; ++dy) {
                 const Cell at{end.at.x + dx, end.at.y + dy};
-                const int turned = end.out == Way::right || dy == 0 ? 0 : 1;
+                const int turned = (end.out == Way::right || dy == 0 ? 0 : 1) - (end.terminal == "out" ? 6 : 0);
                 const int cost = std::abs(dx - 3) * 2 + std::abs(dy) * 3 + (dy != 0 ? 4 : 0) + turned +
                                  2 * std::max(0, right - at.x + 3);
                 if (cost < least && free(at)) least = cost, best = at;

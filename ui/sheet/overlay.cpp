@@ -39,6 +39,11 @@ void say_margin(CutMark& mark, const Findings* findings) {
         return;
     }
     const LoopFinding& loop = *findings->loop;
+    if (!(loop.cut == mark.terminal)) { // the margin known is that of another cut
+        mark.words = QObject::tr("…");
+        mark.stale = true;
+        return;
+    }
     if (!loop.barkhausen) {
         mark.words = QObject::tr("no margin here");
         mark.detail = QString::fromStdString(loop.barkhausen_reason);

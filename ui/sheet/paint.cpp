@@ -53,6 +53,13 @@ void paint_earths(QPainter& painter, const Drawing& drawing, const Theme& theme,
     }
 }
 
+/// Ends that nothing is joined to.
+void paint_free_ends(QPainter& painter, const Drawing& drawing, const Theme& theme) {
+    for (const PartShape& part : drawing.parts())
+        for (const PlacedPort& port : part.ports)
+            if (!port.net) paint_ring(painter, sheet_point(port.at), theme.soft, theme.sheet, 3);
+}
+
 void paint_flags(QPainter& painter, const Drawing& drawing, const Theme& theme) {
     painter.setFont(theme.font(14, QFont::DemiBold));
     for (const Flag& flag : drawing.flags()) {
@@ -142,6 +149,7 @@ void paint_sheet(QPainter& painter, const Drawing& drawing, const Overlay& overl
         const QColor ink = overlay.faulty_parts.contains(static_cast<int>(p)) ? theme.misses : theme.ink;
         paint_part(painter, part, theme, ink, line_px);
     }
+    paint_free_ends(painter, drawing, theme);
     paint_texts(painter, drawing, overlay, theme);
     paint_flags(painter, drawing, theme);
     if (overlay.cut) paint_cut(painter, *overlay.cut, theme);

@@ -69,10 +69,17 @@ void Board::draw(const Route& route, std::int16_t id) {
 
 std::vector<Cell> Board::differences(const Board& other) const {
     std::vector<Cell> cells;
-    for (std::size_t i = 0; i < cells_.size(); ++i)
-        if (!(cells_[i] == other.cells_[i])) {
-            const int n = static_cast<int>(i);
-            cells.push_back({window_.left + n % window_.width, window_.top + n / window_.width});
+    const CellUse empty;
+    for (int y = 0; y < window_.height; ++y)
+        for (int x = 0; x < window_.width; ++x) {
+            const Cell c{window_.left + x, window_.top + y};
+            if (!(at(c) == (other.window_.holds(c) ? other.at(c) : empty))) cells.push_back(c);
+        }
+    if (window_ == other.window_) return cells;
+    for (int y = 0; y < other.window_.height; ++y)
+        for (int x = 0; x < other.window_.width; ++x) {
+            const Cell c{other.window_.left + x, other.window_.top + y};
+            if (!window_.holds(c) && !(other.at(c) == empty)) cells.push_back(c);
         }
     return cells;
 }

@@ -11,10 +11,12 @@ namespace {
 constexpr int step_cost = 10, bend_cost = 25, crossing_cost = 40, junction_cost = 6, near_body_cost = 2;
 constexpr int reserved_cost = 35;                          // before another net's pin: leave its way out free
 constexpr int through_body_cost = 400, overlap_cost = 600; // only where no free way is left
-constexpr int window_margin = 6, wide_margin = 48;
+constexpr int window_margin = 6, wide_margin = 14;
 
 int distance(Cell a, Cell b) { return std::abs(a.x - b.x) + std::abs(a.y - b.y); }
 bool along(Way a, Way b) { return (static_cast<int>(a) & 1) == (static_cast<int>(b) & 1); }
+
+} // namespace
 
 Window window_round(const WantedNet& net, int margin, const Window& board) {
     int left = INT_MAX, top = INT_MAX, right = INT_MIN, bottom = INT_MIN;
@@ -27,7 +29,6 @@ Window window_round(const WantedNet& net, int margin, const Window& board) {
     bottom = std::min(bottom + margin, board.top + board.height - 1);
     return {left, top, right - left + 1, bottom - top + 1};
 }
-} // namespace
 
 /// One net's tree while it grows.
 struct RouteSearch::Tree {
@@ -237,6 +238,7 @@ Grown RouteSearch::grow(const Board& board, const WantedNet& net, std::int16_t i
     Grown grown;
     Tree tree{board, net, id, false, grown, {}, {}};
     for (const int margin : {window_margin, wide_margin}) {
+        grown.margin = margin;
         grown.window = window_round(net, margin, board.window());
         if (grow_in(tree)) return grown;
     }

@@ -35,7 +35,7 @@ class Board {
     int edge(Cell c, Way way) const;
     void draw(const Route& route, std::int16_t id);
     void wipe(const Route& route) { draw(route, -1); }
-    /// Cells used differently on `other`; both boards have the same window.
+    /// Cells used differently on `other`; what lies off a board is empty.
     std::vector<Cell> differences(const Board& other) const;
 
   private:
@@ -52,7 +52,11 @@ struct Grown {
     Route route;
     Window window;
     std::vector<bool> looked; ///< per cell of the window
+    int margin = 0;           ///< round the pins, before the board's edge cut it
 };
+
+/// The part of a board that is searched for a net.
+Window window_round(const WantedNet& net, int margin, const Window& board);
 
 /// Grows one net's tree, nearest pin first, each by the cheapest run to the tree so far. Keeps its work arrays.
 class RouteSearch {

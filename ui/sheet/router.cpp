@@ -150,22 +150,16 @@ Router& Router::operator=(Router&&) noexcept = default;
 const std::vector<Route>& Router::lay(const Terrain& terrain) {
     Memory& m = *memory_;
     if (!m.same_order(terrain)) m.forget();
-    std::vector<std::int16_t> ids = m.number(terrain);
+    const std::vector<std::int16_t> ids = m.number(terrain);
     Board board(terrain, ids);
-    std::vector<Cell> changed;
-    if (board.window() == m.bare.window()) {
-        changed = board.differences(m.bare);
-    } else {
-        m.forget();
-        ids = m.number(terrain);
-        board = Board(terrain, ids);
-    }
+    std::vector<Cell> changed = board.differences(m.bare);
     m.bare = board;
     m.drop_gone(terrain, changed);
     m.order.clear();
     for (const WantedNet& net : terrain.nets) m.order.push_back(net.name);
 
-    const auto touched = [&](const Grown& grown) {
+    const auto touched = [&](const Grown& grown, const WantedNet& net) {
+        if (window_round(net, grown.margin, board.window()) != grown.window) return true;
         return std::any_of(changed.begin(), changed.end(),
                            [&](Cell c) { return grown.window.holds(c) && grown.looked[grown.window.index(c)]; });
     };
@@ -176,7 +170,7 @@ const std::vector<Route>& Router::lay(const Terrain& terrain) {
             Memory::Net& known = m.nets[net.name];
             if (round > 0) board.wipe(known.grown[round - 1].route);
             Grown& grown = known.grown[round];
-            if (!known.known || known.pins != net.pins || touched(grown)) {
+            if (!known.known || known.pins != net.pins || touched(grown, net)) {
                 ++searched_;
                 const std::vector<Cell> before = cells_of(grown.route);
                 grown = m.search.grow(board, net, ids[n]);

@@ -6,12 +6,15 @@
 #include <QPainter>
 #include <QResizeEvent>
 #include <algorithm>
+#include <cmath>
 #include <set>
 
 namespace sinewright::ui {
 
 namespace {
-constexpr double smallest_zoom = 0.2, largest_zoom = 4, fit_margin_px = 48, largest_fit = 1.25;
+constexpr double smallest_zoom = 0.2, largest_zoom = 4, fit_margin_px = 40;
+constexpr double natural_from =
+    0.94; ///< a drawing that nearly fits at its natural size is shown at it: lines stay crisp
 constexpr int wheel_rest_ms = 800;
 } // namespace
 
@@ -56,9 +59,10 @@ void SheetView::zoom_to_fit() {
     const QSizeF room(std::max(80.0, width() - 2 * fit_margin_px), std::max(80.0, height() - 2 * fit_margin_px));
     zoom_ = 1;
     if (!extent.isEmpty())
-        zoom_ = std::clamp(std::min(room.width() / extent.width(), room.height() / extent.height()), smallest_zoom,
-                           largest_fit);
+        zoom_ = std::max(smallest_zoom, std::min(room.width() / extent.width(), room.height() / extent.height()));
+    if (zoom_ > natural_from) zoom_ = 1;
     origin_ = extent.center() - QPointF(width(), height()) / (2 * zoom_);
+    origin_ = {std::round(origin_.x() * zoom_) / zoom_, std::round(origin_.y() * zoom_) / zoom_};
     fitted_ = true;
     update();
 }

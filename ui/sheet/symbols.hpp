@@ -28,6 +28,7 @@ class SymbolPen {
     void disc(QPointF centre, double radius);
     void shape(const QPainterPath& path, bool filled = false, double times = 1);
     void arrow(QPointF from, QPointF to, double head = 5);
+    bool small() const { return smallest_mark_px_ > 0; } ///< a tile: only what shows at that size
     void mark(QPointF centre, const QString& text, double px, int weight = QFont::Medium);
 
   private:

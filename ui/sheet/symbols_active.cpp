@@ -24,6 +24,7 @@ void opamp(SymbolPen& pen) {
     pen.lead({-80, 40}, {-55, 40});
     pen.lead({55, 0}, {80, 0});
     pen.box({-55, -56, 110, 112}, 3);
+    if (pen.small()) return pen.shape(triangle(-14, 30, 28));
     pen.shape(triangle(8, 21, 8, -34), false, 0.9);
     pen.mark({36, -34}, QStringLiteral("∞"), 19);
     pen.mark({-42, -40}, QStringLiteral("+"), 17);
@@ -65,6 +66,13 @@ void jfet(SymbolPen& pen) {
 }
 
 void photocell(SymbolPen& pen) {
+    if (pen.small()) { // the cell and the light that falls on it
+        pen.lead({-60, 16}, {60, 16});
+        pen.box({-34, 0, 68, 32}, 3);
+        pen.arrow({-34, -34}, {-14, -8}, 12);
+        pen.arrow({-8, -34}, {12, -8}, 12);
+        return;
+    }
     pen.box({-44, -36, 88, 72}, 8);
     for (const double side : {-1.0, 1.0}) {
         pen.lead({side * 60, -20}, {side * 44, -20});
