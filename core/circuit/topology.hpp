@@ -10,7 +10,10 @@ struct TieEdge {
     int part; ///< index into Design::parts
 };
 
-/// Unconnected terminals; nets that reach nothing else; nets without a DC path to gnd; loops of ideal sources;
+/// "R3 is not connected at its right end." for every terminal without a net.
+Faults unconnected_terminals(const Design& design);
+
+/// Nets that reach nothing else; nets without a DC path to gnd; loops of ideal sources;
 /// structurally singular equations (maximum matching on the pattern of G and the elements).
 /// Sentences name part and terminal, net, or both sources, e.g. "V1 and V2 force different voltages on the same net."
 Faults topology_faults(const Design& design, const Circuit& circuit, const std::vector<TieEdge>& ties);

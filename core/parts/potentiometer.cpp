@@ -13,6 +13,7 @@ void track(PartStamp& s, int a, int b, double r_ohm, std::string_view name) {
         s.conductance(a, b, 1 / r_ohm);
         return;
     }
+    if (a == b) return; // wired as a rheostat: the short joins a net to itself
     const int j = s.branch_current(name);
     s.branch(j, a, b);
     s.g(j, a, 1);
