@@ -49,8 +49,7 @@ constexpr std::size_t most_tried = 24;
 
 } // namespace
 
-Result<CutChoice> choose_cut(const Design& design, const Circuit&, const Vector& operating_point,
-                             const SmallSignal& small_signal) {
+Result<CutChoice> choose_cut(const Design& design, const Vector& operating_point, const SmallSignal& small_signal) {
     std::optional<CutChoice> rising, finite;
     const auto list = candidates(design);
     for (std::size_t k = 0; k < std::min(list.size(), most_tried); ++k) {

@@ -84,9 +84,10 @@ struct LoopFinding {
     std::optional<BarkhausenPoint> barkhausen;
     std::string barkhausen_reason; ///< why there is none
     std::vector<Crossing> crossings;
-    std::optional<int> encirclements; ///< clockwise, of +1
-    std::string encirclement_note;    ///< a disagreement of the counts, in words; empty when they agree
-    std::string sweep_note;           ///< how the sweep was computed when not by the fast form
+    std::optional<int> encirclements;           ///< clockwise, of +1
+    std::optional<int> opened_right_half_plane; ///< poles of L there
+    std::string encirclement_note;              ///< a disagreement of the counts, in words; empty when they agree
+    std::string sweep_note;                     ///< how the sweep was computed when not by the fast form
 };
 
 /// Governing Barkhausen point by the contract: nearest in log frequency to Im of the right-most complex pair, within a
@@ -101,7 +102,6 @@ struct CutChoice {
     Cut cut;
     std::string reason;
 };
-Result<CutChoice> choose_cut(const Design& design, const Circuit& circuit, const Vector& operating_point,
-                             const SmallSignal& small_signal);
+Result<CutChoice> choose_cut(const Design& design, const Vector& operating_point, const SmallSignal& small_signal);
 
 } // namespace sinewright

@@ -29,18 +29,21 @@ Fault singular(const Pencil& equilibrated, std::span<const std::string> names) {
                  "Check what drives it: two ideal op-amps may act on the same loop, or none on this one."};
 }
 
-/// The first root of each conjugate pair or real root to polish: right-most root and right-most pair.
-void polish_leading(const Pencil& equilibrated, std::vector<Complex>& roots) {
-    sort_right_most_first(roots);
-    const auto polish = [&](std::size_t k) {
-        roots[k] = polish_root(equilibrated, roots[k]);
-        if (roots[k].imag() != 0 && k + 1 < roots.size()) roots[k + 1] = std::conj(roots[k]);
+/// Eigenvalues carry an error relative to the whole matrix; on the full equations each root keeps its own accuracy. A
+/// root that runs into another one on the way stays as it was.
+void polish_all(const Pencil& equilibrated, std::vector<Complex>& roots) {
+    const std::vector<Complex> raw = roots;
+    const auto taken = [&](Complex s, std::size_t own) {
+        for (std::size_t k = 0; k < own; ++k)
+            if (std::abs(roots[k] - s) < 1e-9 * std::abs(s) && std::abs(raw[k] - raw[own]) > 1e-9 * std::abs(s))
+                return true;
+        return false;
     };
-    if (roots.empty()) return;
-    polish(0);
-    if (roots[0].imag() != 0) return;
-    const auto pair = std::find_if(roots.begin(), roots.end(), [](Complex s) { return s.imag() > 0; });
-    if (pair != roots.end()) polish(static_cast<std::size_t>(pair - roots.begin()));
+    for (std::size_t k = 0; k < roots.size(); ++k) {
+        const bool lower_of_pair = raw[k].imag() < 0 && k > 0 && raw[k - 1] == std::conj(raw[k]);
+        const Complex polished = lower_of_pair ? std::conj(roots[k - 1]) : polish_root(equilibrated, raw[k]);
+        if (!taken(polished, k)) roots[k] = polished;
+    }
 }
 
 } // namespace
@@ -53,7 +56,8 @@ Result<std::vector<Complex>> natural_frequencies(const Pencil& pencil, std::span
         const PencilScaling scaling = equilibrate(scaled, w0);
         auto roots = finite_roots(scaled);
         if (!roots) return singular(scaled, names);
-        polish_leading(scaled, *roots);
+        sort_right_most_first(*roots);
+        polish_all(scaled, *roots);
         sort_right_most_first(*roots);
         // Once more on the scale of the pair that matters, where the first guess of that scale was far off.
         const double size = scale_of_interest(*roots);

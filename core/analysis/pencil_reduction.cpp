@@ -120,7 +120,7 @@ Complex polish_root(const Pencil& equilibrated, Complex root) {
     Eigen::VectorXcd v(n);
     for (int k = 0; k < n; ++k) v[k] = Complex(1, 0.25 * ((k * 7) % 5 - 2)); // any vector not orthogonal to the mode
     Complex s = root;
-    double last_step = std::abs(root) * 1e-3;
+    double last_step = std::abs(root) * 3e-3; // further away it may be another root's ground
     for (int step = 0; step < 5; ++step) {
         const Eigen::PartialPivLU<Eigen::MatrixXcd> lu(equilibrated.G.cast<Complex>() + s * equilibrated.C);
         // With (G + s*C)v = 0, (G + sC)z = Cv gives z = v/(s − s*).

@@ -9,10 +9,10 @@ namespace sinewright {
 
 struct TargetFinding {
     std::string name;
-    std::optional<double> value;        ///< in the target's unit; nothing: not known
-    std::optional<double> min, max;     ///< nominal ± within, resolved to limits
-    std::optional<bool> met;            ///< nothing: not known
-    std::string reason;                 ///< why the value is not known
+    std::optional<double> value;    ///< in the target's unit; nothing: not known
+    std::optional<double> min, max; ///< nominal ± within, resolved to limits
+    std::optional<bool> met;        ///< nothing: not known
+    std::string reason;             ///< why the value is not known
 };
 
 enum class Verdict { meets, misses, unknown };
@@ -27,16 +27,16 @@ template <class T> struct Stage {
 };
 
 struct Findings {
-    Faults faults;                       ///< drawing faults: nothing below could be computed
-    std::vector<std::string> nets;       ///< names of the net voltages in operating_point->x
+    Faults faults;                 ///< drawing faults: nothing below could be computed
+    std::vector<std::string> nets; ///< names of the net voltages in operating_point->x
     Stage<OperatingPoint> operating_point;
     Stage<SmallSignal> small_signal;
     Stage<LoopFinding> loop;
     std::shared_ptr<const LoopGain> loop_gain; ///< for curves; null when the loop stage failed
     std::vector<TargetFinding> targets;
     Verdict verdict = Verdict::unknown;
-    std::string headline;                ///< "Meets all 6", "Does not start", "Latches: does not oscillate", "Can't tell: …"
-    std::string main_reason;             ///< one sentence
+    std::string headline;    ///< "Meets all 6", "Does not start", "Latches: does not oscillate", "Can't tell: …"
+    std::string main_reason; ///< one sentence
     bool cancelled = false;
 };
 
@@ -45,12 +45,14 @@ struct Findings {
 Findings check(const Design& design, std::stop_token stop = {},
                const std::function<void(const Findings&)>& stage_done = {});
 
-/// The contract's `check --json` object ("sinewright-findings", version 1), UTF-8, finite numbers only, unknown: null + reason.
+/// The contract's `check --json` object ("sinewright-findings", version 1), UTF-8, finite numbers only, unknown: null +
+/// reason.
 std::string findings_json(const Findings& findings, const Design& design);
 /// The same for people.
 std::string findings_text(const Findings& findings, const Design& design);
 
-/// 0 done and every target met, 1 a target missed or no oscillation, 2 input can't be used, 3 limit or internal failure.
+/// 0 done and every target met, 1 a target missed or no oscillation, 2 input can't be used, 3 limit or internal
+/// failure.
 int exit_status(const Findings& findings);
 
 } // namespace sinewright
