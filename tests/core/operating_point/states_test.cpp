@@ -1,0 +1,73 @@
+#include "../circuit/drawing.hpp"
+#include "core/analysis/operating_point.hpp"
+#include <algorithm>
+
+using namespace sinewright;
+using namespace sinewright::test;
+
+namespace {
+
+/// Positive feedback of one half, negative of one in eleven, round an op-amp with swing ±13 V: it latches.
+Drawing latch() {
+    Drawing d;
+    d.resistor("R1", 10e3, "out", "p").resistor("R2", 10e3, "p", "gnd");
+    d.resistor("R3", 10e3, "out", "m").resistor("R4", 1e3, "m", "gnd").capacitor("C1", 10e-9, "m", "gnd");
+    d.real_opamp("U1", "p", "m", "out");
+    return d;
+}
+
+std::vector<double> outputs(const Circuit& circuit, const std::vector<Vector>& states, std::string_view net) {
+    std::vector<double> volts;
+    for (const Vector& x : states) volts.push_back(voltage(circuit, x, net));
+    std::sort(volts.begin(), volts.end());
+    return volts;
+}
+
+} // namespace
+
+TEST_CASE("a latching stage rests at zero, and can also rest near either swing limit", "[operating_point][ordinary]") {
+    const Circuit circuit = latch().circuit();
+    const auto rest = find_operating_point(circuit);
+    REQUIRE(rest);
+    CHECK(rest->x.cwiseAbs().maxCoeff() == 0); // the state nearest power-up
+    const auto others = find_other_states(circuit, rest->x);
+    const std::vector<double> volts = outputs(circuit, others, "out");
+    REQUIRE(volts.size() == 2);
+    // Source: at the clamp S = S·exp((v_g − 13)/0.05), so v_g = 13 V less w·v_g/(A0·S) of 0.05 V; the 50 Ω divide.
+    const double load_ohm = 1 / (1 / 20e3 + 1 / 11e3);
+    CHECK(volts[1] == Approx(13 * load_ohm / (load_ohm + 50)).epsilon(1e-4));
+    CHECK(volts[0] == Approx(-volts[1]).epsilon(1e-9));
+    Vector f;
+    for (const Vector& x : others) { // put back into the equations
+        evaluate_static(circuit, x, f, nullptr);
+        CHECK(f.cwiseAbs().maxCoeff() < 1e-9);
+    }
+}
+
+TEST_CASE("a loop with more negative than positive feedback at DC has one state", "[operating_point][ordinary]") {
+    Drawing d = bridge_loop();
+    const Circuit circuit = d.circuit();
+    const auto rest = find_operating_point(circuit);
+    REQUIRE(rest);
+    CHECK(find_other_states(circuit, rest->x).empty());
+}
+
+TEST_CASE("what no equation settles by its values is named", "[operating_point][errors]") {
+    // Positive feedback equal to negative feedback: the output of an ideal op-amp may stand anywhere.
+    Drawing d;
+    d.resistor("R1", 10e3, "out", "p").resistor("R2", 10e3, "p", "gnd");
+    d.resistor("R3", 10e3, "out", "m").resistor("R4", 10e3, "m", "gnd").ideal_opamp("U1", "p", "m", "out");
+    const auto found = find_operating_point(d.circuit());
+    REQUIRE_FALSE(found);
+    CHECK(found.fault().kind == FaultKind::singular_pencil);
+    CHECK(found.fault().sentence.find("net out") != std::string::npos);
+    CHECK_FALSE(found.fault().remedy.empty());
+}
+
+TEST_CASE("a search for the operating point stops when asked", "[operating_point][errors]") {
+    std::stop_source stop;
+    stop.request_stop();
+    const auto found = find_operating_point(latch().circuit(), {}, stop.get_token());
+    REQUIRE_FALSE(found);
+    CHECK(found.fault().kind == FaultKind::cancelled);
+}
