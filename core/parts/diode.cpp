@@ -7,39 +7,25 @@ namespace {
 
 enum { saturation_current, ideality, series_resistance, junction_capacitance, transit_time, bandgap };
 
-/// i = Is·(exp(v_j/(n·kT/q)) − 1); stored charge tt·i + Cj·v_j. The junction and its charge lie behind Rs.
-struct Forward {
+/// i = Is·(exp(v_j/(n·kT/q)) − 1); stored charge tt·i. Cj is a constant stamp.
+template <bool StoresCharge> struct Forward {
     static constexpr int controls = 1, outputs = 1;
-    static constexpr bool stores_charge = true;
+    static constexpr bool stores_charge = StoresCharge;
     Junction junction;
-    double tt_s, cj_f;
+    double tt_s;
     template <class T> void operator()(const std::array<T, 1>& v, std::array<T, 1>& i, std::array<T, 1>& q) const {
         i[0] = junction.current(v[0]);
-        q[0] = tt_s * i[0] + cj_f * v[0];
-    }
-    double limiting_scale_v(int) const { return junction.scale_v; }
-};
-
-/// Without stored charge there is one exponential and nothing else to carry.
-struct ForwardOnly {
-    static constexpr int controls = 1, outputs = 1;
-    static constexpr bool stores_charge = false;
-    Junction junction;
-    template <class T> void operator()(const std::array<T, 1>& v, std::array<T, 1>& i, std::array<T, 1>&) const {
-        i[0] = junction.current(v[0]);
+        if constexpr (StoresCharge) q[0] = tt_s * i[0];
     }
     double limiting_scale_v(int) const { return junction.scale_v; }
 };
 
 void stamp(const PartValues& p, PartStamp& s) {
-    const int anode = s.net(0), cathode = s.net(1), inner = behind_resistance(s, anode, p[series_resistance]);
     const Junction junction{saturation_current_at(p[saturation_current], p[ideality], p[bandgap], p.temperature_k),
                             p[ideality] * thermal_voltage_v(p.temperature_k)};
-    const bool stores = p[transit_time] > 0 || p[junction_capacitance] > 0;
-    const LawPtr law =
-        stores ? law_of(Forward{junction, p[transit_time], p[junction_capacitance]}) : law_of(ForwardOnly{junction});
-    s.nonlinear(law, {{{inner, 1}, {cathode, -1}}}, {{{inner, 1}, {cathode, -1}}});
-    s.tie(Tie::conducts, inner, cathode);
+    const double tt_s = p[transit_time];
+    stamp_junction(s, tt_s > 0 ? law_of(Forward<true>{junction, tt_s}) : law_of(Forward<false>{junction, tt_s}),
+                   p[series_resistance], p[junction_capacitance]);
 }
 
 } // namespace

@@ -6,6 +6,9 @@
 
 namespace sinewright {
 
+template <int N> struct Dual;
+template <int N> Dual<N> chain(const Dual<N>& a, double f, double slope);
+
 template <int N> struct Dual {
     double v = 0;
     std::array<double, N> d{};
@@ -37,6 +40,21 @@ template <int N> struct Dual {
     friend Dual operator-(Dual a, const Dual& b) { return a -= b; }
     friend Dual operator*(Dual a, const Dual& b) { return a *= b; }
     friend Dual operator/(Dual a, const Dual& b) { return a /= b; }
+    // A plain number has no derivatives: nothing is multiplied by their zeros.
+    friend Dual operator+(Dual a, double b) {
+        a.v += b;
+        return a;
+    }
+    friend Dual operator+(double a, const Dual& b) { return b + a; }
+    friend Dual operator-(const Dual& a, double b) { return a + -b; }
+    friend Dual operator-(double a, const Dual& b) { return chain(b, a - b.v, -1); }
+    friend Dual operator*(const Dual& a, double b) { return chain(a, a.v * b, b); }
+    friend Dual operator*(double a, const Dual& b) { return b * a; }
+    friend Dual operator/(const Dual& a, double b) { return chain(a, a.v / b, 1 / b); }
+    friend Dual operator/(double a, const Dual& b) {
+        const double y = a / b.v;
+        return chain(b, y, -y / b.v);
+    }
     friend Dual operator-(Dual a) {
         a.v = -a.v;
         for (double& x : a.d) x = -x;
@@ -68,7 +86,8 @@ template <int N> Dual<N> sqrt(const Dual<N>& a) {
     return chain(a, r, 0.5 / r);
 }
 template <int N> Dual<N> pow(const Dual<N>& a, double p) {
-    return chain(a, std::pow(a.v, p), p * std::pow(a.v, p - 1));
+    const double y = std::pow(a.v, p);
+    return chain(a, y, a.v != 0 ? p * y / a.v : p * std::pow(a.v, p - 1));
 }
 inline double value_of(double x) { return x; }
 template <int N> double value_of(const Dual<N>& x) { return x.v; }
@@ -77,7 +96,8 @@ template <int N> double value_of(const Dual<N>& x) { return x.v; }
 template <class T> T limited_exp(const T& x) {
     using std::exp;
     if (value_of(x) <= 80) return exp(x);
-    return T(std::exp(80.0)) * (x - T(79.0));
+    static const double at_knee = std::exp(80.0);
+    return at_knee * (x - 79.0);
 }
 
 } // namespace sinewright

@@ -26,12 +26,19 @@ inline double saturation_current_at(double at_25_c_a, double ideality, double ba
            std::exp(steepness_k * (1 / 298.15 - 1 / temperature_k));
 }
 
-/// Nets of a junction behind its series resistance: an inner node when there is any.
-inline int behind_resistance(PartStamp& s, int anode, double series_ohm) {
-    if (!(series_ohm > 0)) return anode;
-    const int inner = s.internal_voltage("junction");
-    s.conductance(anode, inner, 1 / series_ohm);
-    return inner;
+/// Wires a junction law (control v_j, current and stored charge anode → cathode) with its constant capacitance behind
+/// its series resistance, which carries the whole current: v_j = v_ak − i·Rs.
+inline void stamp_junction(PartStamp& s, LawPtr law, double series_ohm, double capacitance_f) {
+    int anode = s.net(0);
+    const int cathode = s.net(1);
+    if (series_ohm > 0) {
+        const int inner = s.internal_voltage("junction");
+        s.conductance(anode, inner, 1 / series_ohm);
+        anode = inner;
+    }
+    s.nonlinear(std::move(law), {{{anode, 1}, {cathode, -1}}}, {{{anode, 1}, {cathode, -1}}});
+    s.tie(Tie::conducts, anode, cathode);
+    if (capacitance_f > 0) s.capacitance(anode, cathode, capacitance_f);
 }
 
 } // namespace sinewright

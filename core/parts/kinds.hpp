@@ -1,11 +1,29 @@
 #pragma once
-/// The part kinds, one file each; registry.cpp puts them in order.
+/// The shelf: every part kind by name, in the order of the registry. A new kind is one file that defines NAME_kind, and
+/// one line here.
 #include "core/parts/part_kind.hpp"
+
+#define SINEWRIGHT_PART_KINDS(KIND)                                                                                    \
+    KIND(resistor)                                                                                                     \
+    KIND(capacitor)                                                                                                    \
+    KIND(inductor)                                                                                                     \
+    KIND(potentiometer)                                                                                                \
+    KIND(opamp)                                                                                                        \
+    KIND(limiter)                                                                                                      \
+    KIND(diode)                                                                                                        \
+    KIND(zener)                                                                                                        \
+    KIND(lamp)                                                                                                         \
+    KIND(thermistor)                                                                                                   \
+    KIND(jfet)                                                                                                         \
+    KIND(photocell)                                                                                                    \
+    KIND(multiplier)                                                                                                   \
+    KIND(servo)                                                                                                        \
+    KIND(supply)
 
 namespace sinewright {
 
-extern const PartKind resistor_kind, capacitor_kind, inductor_kind, potentiometer_kind, opamp_kind, limiter_kind,
-    diode_kind, zener_kind, lamp_kind, thermistor_kind, jfet_kind, photocell_kind, multiplier_kind, servo_kind,
-    supply_kind;
+#define SINEWRIGHT_DECLARE_KIND(NAME) extern const PartKind NAME##_kind;
+SINEWRIGHT_PART_KINDS(SINEWRIGHT_DECLARE_KIND)
+#undef SINEWRIGHT_DECLARE_KIND
 
 } // namespace sinewright

@@ -51,11 +51,8 @@ LawPtr law_for(const PartValues& p) {
 }
 
 void stamp(const PartValues& p, PartStamp& s) {
-    const int in = s.net(0), out = s.net(1), j = s.branch_current("output current");
-    s.branch(j, out, -1);
-    s.g(j, out, 1);
+    const int in = s.net(0), j = s.ideal_output(s.net(1));
     s.nonlinear(law_for(p), {{{in, 1}}}, {{{j, -1}}});
-    s.tie(Tie::forces_voltage, out, -1);
 }
 
 } // namespace

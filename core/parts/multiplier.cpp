@@ -17,11 +17,8 @@ struct Product {
 };
 
 void stamp(const PartValues& p, PartStamp& s) {
-    const int x = s.net(0), y = s.net(1), out = s.net(2), j = s.branch_current("output current");
-    s.branch(j, out, -1);
-    s.g(j, out, 1);
+    const int x = s.net(0), y = s.net(1), j = s.ideal_output(s.net(2));
     s.nonlinear(law_of(Product{p[scale]}), {{{x, 1}}, {{y, 1}}}, {{{j, -1}}});
-    s.tie(Tie::forces_voltage, out, -1);
 }
 
 } // namespace

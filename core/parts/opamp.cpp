@@ -1,5 +1,6 @@
 #include "core/parts/kinds.hpp"
 #include "core/parts/walls.hpp"
+#include <algorithm>
 #include <numbers>
 
 namespace sinewright {
@@ -33,37 +34,30 @@ enum {
 };
 enum { model_ideal, model_macro };
 
-/// −(S/w)·tanh(w·v_d/S), or −v_d when there is no slew limit, with
-/// v_d = v_plus − v_minus + offset + c1·v_cm + c2·v_cm² + c3·v_cm³ (controls: v_plus − v_minus, v_cm).
-struct InputStage {
-    static constexpr int controls = 2, outputs = 1;
-    static constexpr bool stores_charge = false;
-    double slew_v, offset_v, c1, c2_per_v, c3_per_v2; ///< slew_v: S/w, 0: none
-    template <class T> void operator()(const std::array<T, 2>& u, std::array<T, 1>& out, std::array<T, 1>&) const {
-        using std::tanh;
-        const T v_d = u[0] + offset_v + u[1] * (c1 + u[1] * (c2_per_v + u[1] * c3_per_v2));
-        out[0] = slew_v > 0 ? T(-slew_v * tanh(v_d / slew_v)) : T(-v_d);
-    }
-};
-
-/// The same without common mode: one control.
-struct SlewStage {
+/// a2·v² + a3·v³: what common mode adds to v_d, and what the output stage adds to v_2.
+struct Curvature {
     static constexpr int controls = 1, outputs = 1;
     static constexpr bool stores_charge = false;
-    double slew_v, offset_v;
-    template <class T> void operator()(const std::array<T, 1>& u, std::array<T, 1>& out, std::array<T, 1>&) const {
-        using std::tanh;
-        out[0] = -slew_v * tanh((u[0] + offset_v) / slew_v);
-    }
-};
-
-/// o2·v² + o3·v³, what the output stage adds.
-struct OutputStage {
-    static constexpr int controls = 1, outputs = 1;
-    static constexpr bool stores_charge = false;
-    double o2_per_v, o3_per_v2;
+    double a2_per_v, a3_per_v2;
+    bool none() const { return a2_per_v == 0 && a3_per_v2 == 0; }
+    template <class T> T of(const T& v) const { return v * v * (a2_per_v + a3_per_v2 * v); }
     template <class T> void operator()(const std::array<T, 1>& v, std::array<T, 1>& out, std::array<T, 1>&) const {
-        out[0] = v[0] * v[0] * (o2_per_v + o3_per_v2 * v[0]);
+        out[0] = of(v[0]);
+    }
+};
+
+/// (S/w)·tanh(w·v_d/S). Controls: the linear part of v_d less the offset and, when curved, v_cm.
+template <bool Curved> struct SlewStage {
+    static constexpr int controls = Curved ? 2 : 1, outputs = 1;
+    static constexpr bool stores_charge = false;
+    double slew_v, offset_v; ///< slew_v: S/w
+    Curvature common_mode;
+    template <class T>
+    void operator()(const std::array<T, controls>& u, std::array<T, 1>& out, std::array<T, 1>&) const {
+        using std::tanh;
+        T v_d = u[0] + offset_v;
+        if constexpr (Curved) v_d += common_mode.of(u[1]);
+        out[0] = slew_v * tanh(v_d / slew_v);
     }
 };
 
@@ -94,22 +88,24 @@ void stamp_inputs(const PartValues& p, PartStamp& s) {
     }
 }
 
-/// Adds −(input stage) to the row of v_g, in volts of v_d.
+/// Takes the input stage from the row of v_g, in volts of
+/// v_d = v_plus − v_minus + offset + c1·v_cm + c2·v_cm² + c3·v_cm³; what is linear goes to constant stamps.
 void stamp_input_stage(const PartValues& p, PartStamp& s, int row, double w_rad_per_s) {
     const int plus = s.net(0), minus = s.net(1);
-    const bool common_mode = p[common_mode_2] != 0 || p[common_mode_3] != 0;
-    const bool slews = p.has(slew_rate);
-    const double slew_v = slews ? p[slew_rate] / w_rad_per_s : 0, half_c1 = p[common_mode_1] / 2;
-    const Combination difference{{plus, 1 + half_c1}, {minus, -1 + half_c1}}; // c1·v_cm is linear and goes with it
-    if (common_mode) {
-        s.nonlinear(law_of(InputStage{slew_v, p[offset], p[common_mode_1], p[common_mode_2], p[common_mode_3]}),
-                    {{{plus, 1}, {minus, -1}}, {{plus, 0.5}, {minus, 0.5}}}, {{{row, 1}}});
-    } else if (slews) {
-        s.nonlinear(law_of(SlewStage{slew_v, p[offset]}), {difference}, {{{row, 1}}});
-    } else {
-        for (const auto& [net, weight] : difference) s.g(row, net, -weight);
-        s.source(row, p[offset]);
+    const double half_c1 = p[common_mode_1] / 2;
+    const Combination difference{{plus, 1 + half_c1}, {minus, -1 + half_c1}}, common{{plus, 0.5}, {minus, 0.5}};
+    const Curvature curvature{p[common_mode_2], p[common_mode_3]};
+    if (p.has(slew_rate)) {
+        const double slew_v = p[slew_rate] / w_rad_per_s;
+        if (curvature.none())
+            s.nonlinear(law_of(SlewStage<false>{slew_v, p[offset], curvature}), {difference}, {{{row, -1}}});
+        else
+            s.nonlinear(law_of(SlewStage<true>{slew_v, p[offset], curvature}), {difference, common}, {{{row, -1}}});
+        return;
     }
+    for (const auto& [net, weight] : difference) s.g(row, net, -weight);
+    s.source(row, p[offset]);
+    if (!curvature.none()) s.nonlinear(law_of(curvature), {common}, {{{row, -1}}});
 }
 
 /// dv_g/dt = S·tanh(w·v_d/S) − (w/A0)·v_g − S·[exp((v_g − swing_high)/0.05) − exp((swing_low − v_g)/0.05)],
@@ -135,24 +131,21 @@ int stamp_gain(const PartValues& p, PartStamp& s) {
     return v_2;
 }
 
+/// v_2 + o2·v_2² + o3·v_2³ behind the output resistance
 void stamp_output(const PartValues& p, PartStamp& s, int v_2) {
     const int out = s.net(2);
-    const bool bends = p[output_2] != 0 || p[output_3] != 0;
-    const LawPtr law = bends ? law_of(OutputStage{p[output_2], p[output_3]}) : nullptr;
+    int row = out;
+    double per_volt = 1; // of v_2, in the row
     if (p[output_resistance] > 0) {
-        const double g = 1 / p[output_resistance];
-        s.g(out, out, g);
-        s.g(out, v_2, -g);
-        if (bends) s.nonlinear(law, {{{v_2, 1}}}, {{{out, -g}}});
+        per_volt = 1 / p[output_resistance];
+        s.g(out, out, per_volt);
         s.tie(Tie::conducts, out, -1);
-        return;
+    } else {
+        row = s.ideal_output(out);
     }
-    const int j = s.branch_current("output current");
-    s.branch(j, out, -1);
-    s.g(j, out, 1);
-    s.g(j, v_2, -1);
-    if (bends) s.nonlinear(law, {{{v_2, 1}}}, {{{j, -1}}});
-    s.tie(Tie::forces_voltage, out, -1);
+    s.g(row, v_2, -per_volt);
+    if (const Curvature curvature{p[output_2], p[output_3]}; !curvature.none())
+        s.nonlinear(law_of(curvature), {{{v_2, 1}}}, {{{row, -per_volt}}});
 }
 
 void stamp(const PartValues& p, PartStamp& s) {
@@ -169,7 +162,15 @@ void stamp(const PartValues& p, PartStamp& s) {
 }
 
 std::string check(const PartValues& p) {
-    if (p.word(model) == model_ideal) return "";
+    if (p.word(model) == model_ideal) {
+        // Set to ideal on purpose it may keep its macro values; one that never says which may not mean ideal.
+        const auto macro_only = p.given.begin() + gbw;
+        if (!p.given[model] &&
+            std::find(macro_only, p.given.begin() + noise_voltage, true) != p.given.begin() + noise_voltage)
+            return "values of the macro model are given but no model; set model to macro (or to ideal, to leave them "
+                   "out)";
+        return "";
+    }
     if (!p.has(gbw)) {
         if (p.has(slew_rate)) return "slew_rate needs gbw";
         if (p.has(swing_high) || p.has(swing_low)) return "swing_high and swing_low need gbw";

@@ -31,6 +31,7 @@ struct ParameterInfo {
 struct PartValues {
     std::vector<double> numbers; ///< per parameter; NaN when absent or a word
     std::vector<int> words;      ///< per parameter; index into choices, −1 for numbers
+    std::vector<bool> given;     ///< per parameter: stands in the design, not a default
     double temperature_k = 298.15;
 
     double operator[](int parameter) const { return numbers[parameter]; }
@@ -87,6 +88,14 @@ class PartStamp {
     }
     /// Branch current j flows a → b through the part.
     void branch(int j, int a, int b) { g(a, j, 1), g(b, j, -1); }
+    /// An ideal source from `out` to gnd. Returns its branch current; row j starts as v_out − … = 0.
+    int ideal_output(int out) {
+        const int j = branch_current("output current");
+        branch(j, out, -1);
+        g(j, out, 1);
+        tie(Tie::forces_voltage, out, -1);
+        return j;
+    }
 };
 
 struct PartKind {

@@ -1,5 +1,6 @@
 #include "core/parts/junction.hpp"
 #include "core/parts/kinds.hpp"
+#include <algorithm>
 
 namespace sinewright {
 
@@ -33,7 +34,9 @@ struct Cell {
 
 void stamp(const PartValues& p, PartStamp& s) {
     const int anode = s.net(0), cathode = s.net(1), a = s.net(2), b = s.net(3);
-    const int g = s.state("conductance", "S", 1e-4, p[dark_conductance]);
+    constexpr double usual_led_current_a = 1e-3;
+    const double usual_s = std::max(p[dark_conductance], p[sensitivity] * std::pow(usual_led_current_a, p[gamma]));
+    const int g = s.state("conductance", "S", usual_s, p[dark_conductance]);
     s.c(g, g, p[lag]);
     s.g(g, g, 1);
     s.source(g, p[dark_conductance]);

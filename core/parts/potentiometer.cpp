@@ -6,21 +6,19 @@ namespace {
 
 enum { resistance, position, end_resistance };
 
-/// R_aw = end + R·position, R_wb = end + R·(1 − position). A track of no length is a short, carried by a branch
-/// current.
+/// v_a − v_b − R·j = 0: holds at the stop, where R may be zero, so that turning the wiper never changes which unknowns
+/// there are.
 void track(PartStamp& s, int a, int b, double r_ohm, std::string_view name) {
-    if (r_ohm > 0) {
-        s.conductance(a, b, 1 / r_ohm);
-        return;
-    }
-    if (a == b) return; // wired as a rheostat: the short joins a net to itself
     const int j = s.branch_current(name);
+    if (a == b) return s.g(j, j, 1); // wired as a rheostat: the track joins a net to itself, and nothing flows
     s.branch(j, a, b);
     s.g(j, a, 1);
     s.g(j, b, -1);
-    s.tie(Tie::forces_voltage, a, b);
+    s.g(j, j, -r_ohm);
+    s.tie(r_ohm > 0 ? Tie::conducts : Tie::forces_voltage, a, b);
 }
 
+/// R_aw = end + R·position, R_wb = end + R·(1 − position)
 void stamp(const PartValues& p, PartStamp& s) {
     const int a = s.net(0), w = s.net(1), b = s.net(2);
     track(s, a, w, p[end_resistance] + p[resistance] * p[position], "current a to w");

@@ -4,10 +4,9 @@
 namespace sinewright {
 
 std::span<const PartKind* const> part_kinds() {
-    static const std::array kinds{&resistor_kind,   &capacitor_kind,  &inductor_kind, &potentiometer_kind,
-                                  &opamp_kind,      &limiter_kind,    &diode_kind,    &zener_kind,
-                                  &lamp_kind,       &thermistor_kind, &jfet_kind,     &photocell_kind,
-                                  &multiplier_kind, &servo_kind,      &supply_kind};
+#define ADDRESS(NAME) &NAME##_kind,
+    static constexpr auto kinds = std::to_array<const PartKind*>({SINEWRIGHT_PART_KINDS(ADDRESS)});
+#undef ADDRESS
     return kinds;
 }
 

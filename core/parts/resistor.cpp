@@ -41,8 +41,8 @@ const PartKind resistor_kind{
                    {.name = "voltage_coefficient_2",
                     .unit = "1/V²",
                     .fallback = 0,
-                    .range = Range::not_negative,
-                    .help = "How far the resistance rises with the square of the voltage across it."}},
+                    .help =
+                        "Relative rise of the resistance per volt squared; makes the resistor's own third harmonic."}},
     .stamp = stamp,
 };
 

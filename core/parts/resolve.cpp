@@ -9,6 +9,7 @@ PartValues resolve(const PartKind& kind, const Part& part, double temperature_k)
     const std::size_t count = kind.parameters.size();
     values.numbers.resize(count);
     values.words.assign(count, -1);
+    values.given.assign(count, false);
     for (std::size_t k = 0; k < count; ++k) {
         values.numbers[k] = kind.parameters[k].fallback;
         if (!kind.parameters[k].choices.empty()) values.words[k] = 0;
@@ -16,6 +17,7 @@ PartValues resolve(const PartKind& kind, const Part& part, double temperature_k)
     for (const Parameter& given : part.parameters) {
         const int k = kind.parameter(given.name);
         if (k < 0) continue;
+        values.given[k] = true;
         if (const auto* number = std::get_if<Value>(&given.value)) {
             values.numbers[k] = number->si;
         } else {

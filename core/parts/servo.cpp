@@ -19,10 +19,10 @@ struct Square {
 /// dv_c/dt = κ·[P²/2 − m − (P²/2)·(exp((v_c − control_high)/0.05) − exp((control_low − v_c)/0.05))];
 /// control = v_c + bias + proportional·(P²/2 − m). With no signal the integrator rests at control_high.
 void stamp(const PartValues& p, PartStamp& s) {
-    const int sense = s.net(0), control = s.net(1);
+    const int sense = s.net(0);
     const double wanted_v2 = p[setpoint] * p[setpoint] / 2;
     const int m = s.state("mean square", "V²", wanted_v2, 0);
-    const int v_c = s.state("integrator", "V", 1, p[control_high]);
+    const int v_c = s.state("integrator", "V", (p[control_high] - p[control_low]) / 2, p[control_high]);
     s.c(m, m, p[detector_lag]);
     s.g(m, m, 1);
     s.nonlinear(law_of(Square{}), {{{sense, 1}}}, {{{m, 1}}});
@@ -32,13 +32,10 @@ void stamp(const PartValues& p, PartStamp& s) {
     s.source(v_c, wanted_v2);
     s.nonlinear(law_of(Walls{wanted_v2, p[control_high], p[control_low]}), {{{v_c, 1}}}, {{{v_c, 1}}});
 
-    const int j = s.branch_current("control current");
-    s.branch(j, control, -1);
-    s.g(j, control, 1);
+    const int j = s.ideal_output(s.net(1));
     s.g(j, v_c, -1);
     s.g(j, m, p[proportional]);
     s.source(j, p[bias] + p[proportional] * wanted_v2);
-    s.tie(Tie::forces_voltage, control, -1);
 }
 
 std::string check(const PartValues& p) {

@@ -1,5 +1,6 @@
 #include "core/parts/junction.hpp"
 #include "core/parts/kinds.hpp"
+#include <algorithm>
 
 namespace sinewright {
 
@@ -17,28 +18,30 @@ enum {
     bandgap
 };
 
-/// The diode's current, and −Iz·exp(−(v_j + Vz)/(nz·kT/q)).
-struct Breakdown {
+/// The diode's current, and −Iz·exp(−(v_j + Vz)/(nz·kT/q)); stored charge tt·i. Cj is a constant stamp.
+template <bool StoresCharge> struct Breakdown {
     static constexpr int controls = 1, outputs = 1;
-    static constexpr bool stores_charge = true;
+    static constexpr bool stores_charge = StoresCharge;
     Junction junction;
-    double tt_s, cj_f, vz_v, iz_a, breakdown_scale_v;
+    double tt_s, vz_v, iz_a, breakdown_scale_v;
     template <class T> void operator()(const std::array<T, 1>& v, std::array<T, 1>& i, std::array<T, 1>& q) const {
         i[0] = junction.current(v[0]) - iz_a * limited_exp(T(-(v[0] + vz_v) / breakdown_scale_v));
-        q[0] = tt_s * i[0] + cj_f * v[0];
+        if constexpr (StoresCharge) q[0] = tt_s * i[0];
     }
-    double limiting_scale_v(int) const { return junction.scale_v; }
+    double limiting_scale_v(int) const { return std::min(junction.scale_v, breakdown_scale_v); }
 };
 
-void stamp(const PartValues& p, PartStamp& s) {
-    const int anode = s.net(0), cathode = s.net(1), inner = behind_resistance(s, anode, p[series_resistance]);
+template <bool StoresCharge> LawPtr breakdown_law(const PartValues& p) {
     const double vt_v = thermal_voltage_v(p.temperature_k);
     const Junction junction{saturation_current_at(p[saturation_current], p[ideality], p[bandgap], p.temperature_k),
                             p[ideality] * vt_v};
-    s.nonlinear(law_of(Breakdown{junction, p[transit_time], p[junction_capacitance], p[breakdown_voltage],
-                                 p[breakdown_current], p[breakdown_ideality] * vt_v}),
-                {{{inner, 1}, {cathode, -1}}}, {{{inner, 1}, {cathode, -1}}});
-    s.tie(Tie::conducts, inner, cathode);
+    return law_of(Breakdown<StoresCharge>{junction, p[transit_time], p[breakdown_voltage], p[breakdown_current],
+                                          p[breakdown_ideality] * vt_v});
+}
+
+void stamp(const PartValues& p, PartStamp& s) {
+    stamp_junction(s, p[transit_time] > 0 ? breakdown_law<true>(p) : breakdown_law<false>(p), p[series_resistance],
+                   p[junction_capacitance]);
 }
 
 } // namespace
