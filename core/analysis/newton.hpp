@@ -1,45 +1,49 @@
 #pragma once
-/// Damped Newton on the circuit's equations with something added: the engine of operating point and latched states.
-#include "core/analysis/operating_point.hpp"
-#include <Eigen/LU>
-#include <functional>
+/// Newton's method for f(x) − shift + M·(x − reference) = 0: the one solver under every stage of the operating point.
+#include "core/circuit/circuit.hpp"
+#include <memory>
+#include <stop_token>
 
 namespace sinewright {
 
-/// What is solved: f(x) of the circuit plus what `extra` adds to f and its Jacobian (sources scaled, conductance to
-/// gnd, charge over a time step).
-using AddedTerms = std::function<void(const Vector& x, Vector& f, Matrix* jacobian)>;
+/// What a continuation stage adds to f(x) = 0; empty: nothing.
+struct Modification {
+    const Vector* shift = nullptr;     ///< n, subtracted from f
+    const Matrix* extra = nullptr;     ///< M, n×n
+    const Vector* reference = nullptr; ///< n; wanted with M
+    /// Known solutions to stay away from: the step is deflated (Farrell, Birkisson & Funke 2015).
+    const std::vector<Vector>* deflated = nullptr;
+};
 
-enum class NewtonEnd { converged, singular, stuck, cancelled };
+enum class NewtonEnd { converged, singular, stalled, not_finite, cancelled };
 
-class NewtonSolver {
+/// Each element is linearised at control values ũ of its own. They follow Aᵀx, but only so far that the element's true
+/// output stays near the linear prediction: then a junction reaches the predicted current in one step, a clamp its
+/// edge, and nothing overflows. With all ũ = Aᵀx the step is Newton's.
+class LimitedNewton {
   public:
-    NewtonSolver(const Circuit& circuit, const OperatingPointOptions& options, std::stop_token stop);
-    /// Improves x in place. Returns why it stopped.
-    NewtonEnd solve(Vector& x, const AddedTerms& extra = {});
+    LimitedNewton();
+    ~LimitedNewton();
+    LimitedNewton(LimitedNewton&&) noexcept;
+    LimitedNewton& operator=(LimitedNewton&&) noexcept;
 
-    int iterations() const { return iterations_; }
-    double last_step() const { return last_step_; }
-    /// After `singular`: the unknown with the largest part in a solution of the homogeneous equations.
-    int undetermined() const { return undetermined_; }
-    /// After `stuck`: the equation with the largest residual against its own terms.
-    int worst_equation() const { return worst_; }
+    void prepare(const Circuit& circuit);
+    /// Iterates from x in place.
+    NewtonEnd solve(Vector& x, const Modification& modification, int max_iterations, double relative_tolerance,
+                    const std::stop_token& stop);
+    int iterations() const; ///< all since prepare
+    /// Largest step of the last iteration, against each unknown's size or usual size.
+    double last_step() const;
+    /// Row with the largest |f| at the last linearisation against the size of its terms.
+    int worst_row() const;
+    /// Part whose law gave a value that is not finite at the last stop; −1: none.
+    int not_finite_part() const;
+    /// Unknowns that the last, singular Jacobian leaves free, the freest first.
+    std::vector<int> free_unknowns() const;
 
   private:
-    void evaluate(const Vector& x, Vector& f, Matrix* jacobian, const AddedTerms& extra);
-    bool factorise();
-    double size_of_step(const Vector& step, const Vector& x) const;
-    bool step_once(Vector& x, const AddedTerms& extra);
-    double junction_limit(const Vector& step) const;
-
-    const Circuit& circuit_;
-    OperatingPointOptions options_;
-    std::stop_token stop_;
-    Vector f_, f_trial_, step_, trial_, row_scale_, typical_;
-    Matrix jacobian_;
-    Eigen::PartialPivLU<Matrix> lu_;
-    int iterations_ = 0, undetermined_ = 0, worst_ = 0;
-    double last_step_ = 0;
+    struct State;
+    std::unique_ptr<State> state_;
 };
 
 } // namespace sinewright

@@ -1,135 +1,204 @@
 #include "core/analysis/operating_point.hpp"
 #include "core/analysis/newton.hpp"
+#include <algorithm>
 #include <cmath>
-#include <optional>
+#include <fmt/format.h>
 
 namespace sinewright {
-
 namespace {
 
-Vector power_up(const Circuit& circuit) {
-    Vector x(circuit.size());
-    for (int k = 0; k < circuit.size(); ++k) x[k] = circuit.unknowns[k].start;
-    return x;
+/// Source stepping gives up when a step is smaller than this share of the whole.
+constexpr double smallest_source_step = 1e-6;
+/// Conductance stepping: from far above any circuit's conductances to below what any notices.
+constexpr double largest_conductance_s = 1, smallest_conductance_s = 1e-13;
+/// Stages lead to a start for the next; only the last must be sharp.
+constexpr double stage_tolerance = 1e-6;
+constexpr int stage_iterations = 30;
+constexpr int pseudo_transient_steps = 200;
+
+std::string name_of_quantity(const Unknown& unknown) {
+    return unknown.kind == UnknownKind::net_voltage ? "the voltage of " + unknown.name : unknown.name;
 }
 
-/// Follows a parameter from 1 to 0 with steps that shrink on failure and grow on success; `extra(p)` is what is added
-/// to the equations at p.
-template <class Extra> NewtonEnd follow(NewtonSolver& solver, Vector& x, Extra extra) {
-    Vector reached = x;
-    double p = 1, step = 0.25;
-    NewtonEnd end = solver.solve(reached, extra(p));
-    if (end != NewtonEnd::converged) return end;
-    while (p > 0) {
-        if (step < 1e-5) return NewtonEnd::stuck;
-        const double next = std::max(0.0, p - step);
-        Vector trial = reached;
-        end = solver.solve(trial, extra(next));
-        if (end == NewtonEnd::cancelled) return end;
-        if (end == NewtonEnd::converged) {
-            reached = trial, p = next, step *= 2;
-        } else {
-            step /= 4;
-        }
-    }
-    x = reached;
-    return NewtonEnd::converged;
+std::string name_of_equation(const Unknown& unknown) {
+    return unknown.kind == UnknownKind::net_voltage ? "the current balance of " + unknown.name
+                                                    : "the equation of " + unknown.name;
 }
 
-/// All sources rise together: f + p·s, so that p = 1 is the circuit without sources.
-NewtonEnd step_sources(NewtonSolver& solver, const Circuit& circuit, Vector& x) {
-    return follow(solver, x, [&](double p) -> AddedTerms {
-        return [&circuit, p](const Vector&, Vector& f, Matrix*) { f += p * circuit.s; };
-    });
+std::string where_of(const Unknown& unknown) { return unknown.part.empty() ? unknown.name : unknown.part; }
+
+Fault singular_fault(const Circuit& circuit, const std::vector<int>& free) {
+    constexpr std::size_t most_named = 3;
+    std::string names;
+    for (std::size_t k = 0; k < std::min(free.size(), most_named); ++k)
+        names += fmt::format("{}{}", k == 0 ? "" : ", ", name_of_quantity(circuit.unknowns[free[k]]));
+    const Unknown& first = circuit.unknowns[free.front()];
+    const bool more = free.size() > most_named;
+    return {FaultKind::singular_pencil, where_of(first),
+            free.size() == 1 ? fmt::format("At DC nothing determines {}.", names)
+                             : fmt::format("At DC nothing determines these together: {}{}.", names, more ? ", …" : ""),
+            fmt::format("Give {} a resistor to a net with a DC path, or change a value that cancels exactly.",
+                        where_of(first))};
 }
 
-/// A conductance from every net to gnd, from 10 mS down over ten decades and then away.
-NewtonEnd step_conductance(NewtonSolver& solver, const Circuit& circuit, Vector& x) {
-    return follow(solver, x, [&](double p) -> AddedTerms {
-        const double siemens = p > 0 ? 1e-2 * std::pow(10.0, -10 * (1 - p)) : 0;
-        return [&circuit, siemens](const Vector& at, Vector& f, Matrix* jacobian) {
-            for (int k = 0; k < circuit.net_count; ++k) {
-                f[k] += siemens * at[k];
-                if (jacobian) (*jacobian)(k, k) += siemens;
-            }
-        };
-    });
-}
-
-/// Implicit Euler on an artificial lag of every unknown, with growing steps: from rest to rest however far.
-NewtonEnd pseudo_transient(NewtonSolver& solver, const Circuit& circuit, Vector& x) {
-    const Vector rates = circuit.G.cwiseAbs().rowwise().maxCoeff();
-    double step = 1e-3;
-    for (int round = 0; round < 400; ++round) {
-        const Vector from = x;
-        const AddedTerms lag = [&](const Vector& at, Vector& f, Matrix* jacobian) {
-            for (int k = 0; k < circuit.size(); ++k) {
-                const double weight = (rates[k] > 0 ? rates[k] : 1) / step;
-                f[k] += weight * (at[k] - from[k]);
-                if (jacobian) (*jacobian)(k, k) += weight;
-            }
-        };
-        Vector trial = x;
-        const NewtonEnd end = solver.solve(trial, lag);
-        if (end == NewtonEnd::cancelled) return end;
-        if (end != NewtonEnd::converged) {
-            step /= 8;
-            if (step < 1e-12) return NewtonEnd::stuck;
-            continue;
-        }
-        x = trial;
-        step *= 2;
-        if (step > 1e9) return solver.solve(x);
-    }
-    return NewtonEnd::stuck;
-}
-
-Fault singular_fault(const Circuit& circuit, int k) {
-    const Unknown& unknown = circuit.unknowns[k];
-    return {FaultKind::singular_pencil, unknown.part.empty() ? unknown.name : unknown.part,
-            "At DC no equation determines " + unknown.name + ".",
-            "Look for a net held only by capacitors or by two ideal op-amps in one loop, or for an op-amp without "
-            "feedback at DC."};
-}
+const Fault cancelled_fault{FaultKind::cancelled, "", "The search for the DC operating point was stopped.", ""};
 
 } // namespace
 
+/// Newton and the continuations that help it to a start.
+struct OperatingPointSolver::Workspace {
+    LimitedNewton newton;
+    Vector start, shift, f, q;
+    Matrix extra;
+
+    Result<OperatingPoint> solve(const Circuit& circuit, const Vector* near, const OperatingPointOptions& options,
+                                 const std::stop_token& stop);
+
+  private:
+    NewtonEnd polish(Vector& x, const OperatingPointOptions& options, const std::stop_token& stop) {
+        return newton.solve(x, {}, options.max_iterations, options.relative_tolerance, stop);
+    }
+    NewtonEnd step_sources(const Circuit& circuit, Vector& x, const OperatingPointOptions& options,
+                           const std::stop_token& stop);
+    NewtonEnd step_conductance(const Circuit& circuit, Vector& x, const OperatingPointOptions& options,
+                               const std::stop_token& stop);
+    NewtonEnd follow_pseudo_transient(const Circuit& circuit, Vector& x, const OperatingPointOptions& options,
+                                      const std::stop_token& stop);
+    Fault not_converged_fault(const Circuit& circuit) const;
+};
+
+/// f(x) = (1 − α)·f(x_start), α from 0 to 1: x_start solves the first, and α raises all sources together, since at
+/// power-up nothing but the sources is out of balance.
+NewtonEnd OperatingPointSolver::Workspace::step_sources(const Circuit& circuit, Vector& x,
+                                                        const OperatingPointOptions& options,
+                                                        const std::stop_token& stop) {
+    evaluate_static(circuit, start, f, nullptr);
+    if (!f.allFinite()) return NewtonEnd::not_finite;
+    x = start;
+    Vector trial = x;
+    for (double alpha = 0, step = 0.1; alpha < 1;) {
+        const double next = std::min(1.0, alpha + step);
+        shift = (1 - next) * f;
+        trial = x;
+        const NewtonEnd end = newton.solve(trial, {.shift = &shift}, stage_iterations, stage_tolerance, stop);
+        if (end == NewtonEnd::cancelled) return end;
+        if (end == NewtonEnd::converged) {
+            x = trial, alpha = next, step *= 2;
+            continue;
+        }
+        step /= 4;
+        if (step < smallest_source_step) return end;
+    }
+    return polish(x, options, stop);
+}
+
+/// A conductance from every net to its voltage at power-up, taken away decade by decade.
+NewtonEnd OperatingPointSolver::Workspace::step_conductance(const Circuit& circuit, Vector& x,
+                                                            const OperatingPointOptions& options,
+                                                            const std::stop_token& stop) {
+    x = start;
+    Vector trial = x;
+    double factor = 10;
+    for (double conductance = largest_conductance_s; conductance > smallest_conductance_s;) {
+        extra.setZero(circuit.size(), circuit.size());
+        extra.diagonal().head(circuit.net_count).setConstant(conductance);
+        trial = x;
+        const NewtonEnd end =
+            newton.solve(trial, {.extra = &extra, .reference = &start}, stage_iterations, stage_tolerance, stop);
+        if (end == NewtonEnd::cancelled) return end;
+        if (end == NewtonEnd::converged) {
+            x = trial, factor = std::min(10.0, factor * factor), conductance /= factor;
+            continue;
+        }
+        conductance *= factor, factor = std::sqrt(factor), conductance /= factor;
+        if (conductance >= largest_conductance_s || factor < 1.01) return end;
+    }
+    return polish(x, options, stop);
+}
+
+/// Lets the circuit settle in time by implicit Euler with growing steps (Kelley & Keyes 1998). Ends in a stable state.
+NewtonEnd OperatingPointSolver::Workspace::follow_pseudo_transient(const Circuit& circuit, Vector& x,
+                                                                   const OperatingPointOptions& options,
+                                                                   const std::stop_token& stop) {
+    x = start;
+    Vector trial = x;
+    Matrix capacitance;
+    double step_s = 1e-9;
+    constexpr double longest_step_s = 1e6, shortest_step_s = 1e-15;
+    for (int k = 0; k < pseudo_transient_steps && step_s < longest_step_s; ++k) {
+        evaluate_charge(circuit, x, q, &capacitance);
+        extra = capacitance / step_s;
+        trial = x;
+        const NewtonEnd end =
+            newton.solve(trial, {.extra = &extra, .reference = &x}, stage_iterations, stage_tolerance, stop);
+        if (end == NewtonEnd::cancelled) return end;
+        if (end == NewtonEnd::converged)
+            x = trial, step_s *= 2;
+        else if ((step_s /= 8) < shortest_step_s)
+            return end;
+    }
+    return polish(x, options, stop);
+}
+
+Fault OperatingPointSolver::Workspace::not_converged_fault(const Circuit& circuit) const {
+    const Unknown& worst = circuit.unknowns[newton.worst_row()];
+    return {FaultKind::not_converged, where_of(worst),
+            fmt::format("No DC operating point found: {} stays out of balance. Tried Newton, source stepping, "
+                        "conductance stepping and pseudo-transient, {} iterations in all.",
+                        name_of_equation(worst), newton.iterations()),
+            fmt::format("Look at the values around {}.", where_of(worst))};
+}
+
+Result<OperatingPoint> OperatingPointSolver::Workspace::solve(const Circuit& circuit, const Vector* near,
+                                                              const OperatingPointOptions& options,
+                                                              const std::stop_token& stop) {
+    newton.prepare(circuit);
+    start.resize(circuit.size());
+    for (int k = 0; k < circuit.size(); ++k) start[k] = circuit.unknowns[k].start;
+    Vector x = near ? *near : start;
+    const auto answer = [&](const char* method) {
+        return OperatingPoint{std::move(x), newton.iterations(), newton.last_step(), method, {}};
+    };
+    NewtonEnd end = polish(x, options, stop);
+    if (near && end != NewtonEnd::converged && end != NewtonEnd::cancelled) x = start, end = polish(x, options, stop);
+    if (end == NewtonEnd::converged) return answer("Newton");
+    if (end == NewtonEnd::singular && circuit.elements.empty()) return singular_fault(circuit, newton.free_unknowns());
+    // Singular at power-up already: likely for good. Later on a path may just fold back there.
+    const bool singular_first = end == NewtonEnd::singular && newton.iterations() == 1;
+    const std::vector<int> free_first = newton.free_unknowns();
+    using Stage =
+        NewtonEnd (Workspace::*)(const Circuit&, Vector&, const OperatingPointOptions&, const std::stop_token&);
+    constexpr std::pair<Stage, const char*> stages[] = {{&Workspace::step_sources, "source stepping"},
+                                                        {&Workspace::step_conductance, "conductance stepping"},
+                                                        {&Workspace::follow_pseudo_transient, "pseudo-transient"}};
+    for (const auto& [stage, method] : stages) {
+        if (end == NewtonEnd::cancelled) break;
+        end = (this->*stage)(circuit, x, options, stop);
+        if (end == NewtonEnd::converged) return answer(method);
+    }
+    if (end == NewtonEnd::cancelled) return cancelled_fault;
+    if (singular_first) return singular_fault(circuit, free_first);
+    return not_converged_fault(circuit);
+}
+
+OperatingPointSolver::OperatingPointSolver() : workspace_(std::make_unique<Workspace>()) {}
+OperatingPointSolver::~OperatingPointSolver() = default;
+OperatingPointSolver::OperatingPointSolver(OperatingPointSolver&&) noexcept = default;
+OperatingPointSolver& OperatingPointSolver::operator=(OperatingPointSolver&&) noexcept = default;
+
+Result<OperatingPoint> OperatingPointSolver::solve(const Circuit& circuit, const OperatingPointOptions& options,
+                                                   std::stop_token stop) {
+    return workspace_->solve(circuit, nullptr, options, stop);
+}
+
+Result<OperatingPoint> OperatingPointSolver::solve_from(const Circuit& circuit, const Vector& start,
+                                                        const OperatingPointOptions& options, std::stop_token stop) {
+    return workspace_->solve(circuit, &start, options, stop);
+}
+
 Result<OperatingPoint> find_operating_point(const Circuit& circuit, const OperatingPointOptions& options,
                                             std::stop_token stop) {
-    NewtonSolver solver(circuit, options, stop);
-    NewtonEnd end = NewtonEnd::stuck;
-    int undetermined = -1, worst = 0;
-    const auto attempt = [&](const char* method, auto how) -> std::optional<OperatingPoint> {
-        Vector x = power_up(circuit);
-        end = how(x);
-        if (end == NewtonEnd::singular && undetermined < 0) undetermined = solver.undetermined();
-        if (end == NewtonEnd::stuck) worst = solver.worst_equation();
-        if (end != NewtonEnd::converged) return std::nullopt;
-        return OperatingPoint{x, solver.iterations(), solver.last_step(), method, {}};
-    };
-    const auto cancelled = [] {
-        return Fault{FaultKind::cancelled, "", "Stopped while looking for the operating point.", ""};
-    };
-
-    if (auto found = attempt("Newton", [&](Vector& x) { return solver.solve(x); })) return *found;
-    if (end == NewtonEnd::cancelled) return cancelled();
-    if (end == NewtonEnd::singular && circuit.elements.empty()) return singular_fault(circuit, undetermined);
-    if (auto found = attempt("source stepping", [&](Vector& x) { return step_sources(solver, circuit, x); }))
-        return *found;
-    if (end == NewtonEnd::cancelled) return cancelled();
-    if (auto found = attempt("conductance stepping", [&](Vector& x) { return step_conductance(solver, circuit, x); }))
-        return *found;
-    if (end == NewtonEnd::cancelled) return cancelled();
-    if (auto found = attempt("pseudo-transient", [&](Vector& x) { return pseudo_transient(solver, circuit, x); }))
-        return *found;
-    if (end == NewtonEnd::cancelled) return cancelled();
-    if (undetermined >= 0) return singular_fault(circuit, undetermined);
-    const Unknown& unknown = circuit.unknowns[worst];
-    return Fault{
-        FaultKind::not_converged, unknown.part.empty() ? unknown.name : unknown.part,
-        "No DC operating point found; the balance at " + unknown.name +
-            " would not close. Tried Newton, source stepping, conductance stepping and pseudo-transient continuation.",
-        "Check the values round it."};
+    return OperatingPointSolver().solve(circuit, options, stop);
 }
 
 } // namespace sinewright

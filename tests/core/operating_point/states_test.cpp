@@ -44,6 +44,24 @@ TEST_CASE("a latching stage rests at zero, and can also rest near either swing l
     }
 }
 
+TEST_CASE("a latch through five op-amps has three states", "[operating_point][tricky]") {
+    Drawing d;
+    d.resistor("R1", 10e3, "o5", "p").resistor("R2", 10e3, "p", "gnd");
+    d.resistor("R3", 30e3, "o1", "m").resistor("R4", 10e3, "m", "gnd").real_opamp("U1", "p", "m", "o1");
+    for (int k = 2; k <= 5; ++k) {
+        const std::string in = "o" + std::to_string(k - 1), out = "o" + std::to_string(k);
+        d.real_opamp("U" + std::to_string(k), in.c_str(), out.c_str(), out.c_str());
+    }
+    const Circuit circuit = d.circuit();
+    const auto rest = find_operating_point(circuit);
+    REQUIRE(rest);
+    const auto volts = outputs(circuit, find_other_states(circuit, rest->x), "o5");
+    REQUIRE(volts.size() == 2);
+    // Near the swing limits of ±13 V; each follower loses some of the last 0.1 V to its own soft clamp.
+    CHECK(volts[0] == Approx(-13).margin(0.2));
+    CHECK(volts[1] == Approx(13).margin(0.2));
+}
+
 TEST_CASE("a loop with more negative than positive feedback at DC has one state", "[operating_point][ordinary]") {
     Drawing d = bridge_loop();
     const Circuit circuit = d.circuit();
@@ -62,6 +80,20 @@ TEST_CASE("what no equation settles by its values is named", "[operating_point][
     CHECK(found.fault().kind == FaultKind::singular_pencil);
     CHECK(found.fault().sentence.find("net out") != std::string::npos);
     CHECK_FALSE(found.fault().remedy.empty());
+}
+
+TEST_CASE("a circuit with no DC solution is not converged, never a number", "[operating_point][errors]") {
+    // v = v² + 1 has no real root: a multiplier squares its own output through an adder.
+    Drawing d;
+    d.supply("V1", 1, "one").add("multiplier", "M1", {{"scale", 1}}, {"y", "y", "q"});
+    d.resistor("R1", 1e3, "one", "m").resistor("R2", 1e3, "q", "m").resistor("R3", 1e3, "m", "inv");
+    d.ideal_opamp("U1", "gnd", "m", "inv").resistor("R4", 1e3, "inv", "n").resistor("R5", 1e3, "n", "y");
+    d.ideal_opamp("U2", "gnd", "n", "y");
+    const auto found = find_operating_point(d.circuit());
+    REQUIRE_FALSE(found);
+    CHECK(found.fault().kind == FaultKind::not_converged);
+    CHECK(found.fault().sentence.find("source stepping") != std::string::npos);
+    CHECK_FALSE(found.fault().where.empty());
 }
 
 TEST_CASE("a search for the operating point stops when asked", "[operating_point][errors]") {
