@@ -1,5 +1,6 @@
 #include "core/design/atomic_file.hpp"
 #include "core/design/file.hpp"
+#include <cmath>
 #include <nlohmann/json.hpp>
 
 namespace sinewright {
@@ -8,7 +9,13 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-Json json_of(const Value& value) { return value.spelling.empty() ? Json(value.si) : Json(value.spelling); }
+/// Whole numbers without a decimal point: 25, not 25.0.
+Json number(double value) {
+    const bool whole = value == std::floor(value) && std::abs(value) < 1e15 && !(value == 0 && std::signbit(value));
+    return whole ? Json(static_cast<long long>(value)) : Json(value);
+}
+
+Json json_of(const Value& value) { return value.spelling.empty() ? number(value.si) : Json(value.spelling); }
 Json json_of(const TerminalRef& ref) { return {{"part", ref.part}, {"terminal", ref.terminal}}; }
 
 /// One line: `{"ref": "R1", "kind": "resistor", …}`.
@@ -45,7 +52,7 @@ Json json_of(const Part& part) {
     j["terminals"] = terminals;
     if (part.place)
         j["place"] = {
-            {"x", part.place->x}, {"y", part.place->y}, {"turn", part.place->turn}, {"flip", part.place->flip}};
+            {"x", number(part.place->x)}, {"y", number(part.place->y)}, {"turn", part.place->turn}, {"flip", part.place->flip}};
     return j;
 }
 
@@ -66,7 +73,7 @@ Json json_of(const Dial& dial) {
 }
 
 Json json_of(const Label& label) {
-    Json j{{"net", label.net}, {"x", label.x}, {"y", label.y}};
+    Json j{{"net", label.net}, {"x", number(label.x)}, {"y", number(label.y)}};
     if (label.stub_of) j["stub_of"] = json_of(*label.stub_of);
     return j;
 }
@@ -82,7 +89,7 @@ Json json_of(const Target& target) {
 
 Json json_of(const Conditions& conditions) {
     Json j = Json::object();
-    if (conditions.temperature_c) j["temperature_c"] = *conditions.temperature_c;
+    if (conditions.temperature_c) j["temperature_c"] = {number((*conditions.temperature_c)[0]), number((*conditions.temperature_c)[1])};
     if (conditions.supply) j["supply"] = json_of(*conditions.supply);
     return j;
 }
@@ -113,7 +120,7 @@ std::string design_text(const Design& design) {
     writer.line("version", Json(1));
     writer.line("title", Json(design.title));
     writer.line("notes", Json(design.notes));
-    writer.line("temperature_c", Json(design.temperature_c));
+    writer.line("temperature_c", number(design.temperature_c));
     writer.line("output", Json(design.output));
     if (design.cut) writer.line("cut", json_of(*design.cut));
     writer.list("parts", design.parts);

@@ -24,6 +24,15 @@ LoopCurve curve_of(const Findings& findings) {
     return findings.loop_gain->sweep(*centre_hz / half_span, *centre_hz * half_span, curve_points);
 }
 
+constexpr double lens_reach = 1.35; // the lens shows this factor either side of the crossing
+constexpr int lens_points = 81;
+
+LoopCurve lens_of(const Findings& findings) {
+    if (!findings.loop_gain || !findings.loop || !findings.loop->barkhausen) return {};
+    const double centre_hz = findings.loop->barkhausen->frequency_hz;
+    return findings.loop_gain->sweep(centre_hz / lens_reach, centre_hz * lens_reach, lens_points);
+}
+
 struct Job {
     quint64 revision = 0;
     std::shared_ptr<const Design> design;
@@ -75,7 +84,7 @@ class Analyst::Worker {
             shown->revision = job.revision;
             shown->design = job.design;
             shown->findings = check(*job.design, superseded);
-            if (!superseded.stop_requested()) shown->curve = curve_of(shown->findings);
+            if (!superseded.stop_requested()) shown->curve = curve_of(shown->findings), shown->lens = lens_of(shown->findings);
 
             lock.lock();
             if (superseded.stop_requested()) continue;

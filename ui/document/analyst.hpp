@@ -15,6 +15,7 @@ struct Shown {
     std::shared_ptr<const Design> design; ///< the snapshot they were computed from
     Findings findings;
     LoopCurve curve; ///< empty when there is no loop gain; about 600 points
+    LoopCurve lens;  ///< finely round the Barkhausen point; empty without one
 };
 using ShownPtr = std::shared_ptr<const Shown>;
 
