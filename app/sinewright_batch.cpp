@@ -1,5 +1,6 @@
 /// sinewright-batch: the analyses without a display, for scripts, build servers and clusters.
 #include "core/design/file.hpp"
+#include "core/design/words.hpp"
 #include "core/review/describe.hpp"
 #include "core/review/findings.hpp"
 #include <CLI/CLI.hpp>
@@ -22,8 +23,8 @@ struct Options {
 
 int refuse(const Faults& faults) {
     for (const Fault& fault : faults)
-        std::fprintf(stderr, "sinewright-batch: %s%s%s\n", fault.sentence.c_str(), fault.remedy.empty() ? "" : " ",
-                     fault.remedy.c_str());
+        std::fprintf(stderr, "sinewright-batch: %s\n",
+                     printable(fault.sentence + (fault.remedy.empty() ? "" : " " + fault.remedy)).c_str());
     return unusable;
 }
 

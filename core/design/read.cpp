@@ -1,4 +1,5 @@
 #include "core/design/file.hpp"
+#include "core/design/utf8.hpp"
 #include "core/design/words.hpp"
 #include "core/quantity/quantity.hpp"
 #include <algorithm>
@@ -238,7 +239,7 @@ class Reader {
                 std::vector<std::string> names;
                 for (const TerminalInfo& info : kind.terminals) names.emplace_back(info.name);
                 add(FaultKind::unknown_key, where + "." + key,
-                    where + ": a " + std::string(kind.title) + " has no terminal `" + key + "`.",
+                    where + ": " + with_article(kind.title) + " has no terminal `" + key + "`.",
                     "Its terminals are " + quoted_list(names) + ".");
             } else if (v.is_string()) {
                 part.terminals[k].net = v.get<std::string>();
@@ -404,9 +405,9 @@ class Reader {
 std::string plain_reason(std::string what) {
     // "[json.exception.parse_error.101] parse error at line 1, column 2: …": the library's tag says nothing to a user.
     if (const auto end = what.find("] "); what.starts_with("[") && end != std::string::npos) what.erase(0, end + 2);
-    std::string clean;
-    for (const char c : what) clean += static_cast<unsigned char>(c) < 0x20 ? ' ' : c;
-    return clean.substr(0, 200);
+    for (char& c : what)
+        if (static_cast<unsigned char>(c) >= 0x80) c = '?'; // the library cuts the text it quotes inside characters
+    return printable(what).substr(0, 200);
 }
 
 } // namespace
@@ -420,6 +421,10 @@ Result<ReadDesign> parse_design(std::string_view json_text, std::string_view nam
         return Fault{FaultKind::malformed_file, file, file + " is not UTF-8 text: it looks like UTF-16.",
                      "Save it as UTF-8."};
     if (json_text.starts_with("\xef\xbb\xbf")) json_text.remove_prefix(3);
+    if (const auto line = line_not_utf8(json_text))
+        return Fault{FaultKind::malformed_file, file + ", line " + std::to_string(*line),
+                     file + " is not UTF-8 text: line " + std::to_string(*line) + " holds other bytes.",
+                     "Save it as UTF-8."};
     Watch watch;
     Json top;
     try {

@@ -81,14 +81,11 @@ class Validator {
     }
 
     void name(const std::string& text, const std::string& what) {
-        const bool control = std::any_of(text.begin(), text.end(),
-                                         [](char c) { return static_cast<unsigned char>(c) < 0x20 || c == 0x7f; });
-        std::string shown;
-        for (const char c : text) shown += static_cast<unsigned char>(c) < 0x20 || c == 0x7f ? '?' : c;
+        const std::string shown = printable(text);
         const std::string where = what == "net" ? "net " + shown : shown;
         if (text.empty())
             add(FaultKind::bad_quantity, what, "A " + what + " has an empty name.", "Give it a name.");
-        else if (control)
+        else if (shown != text)
             add(FaultKind::bad_quantity, where, "The " + what + " name `" + shown + "` contains control characters.",
                 "Use letters, digits and marks only.");
         else if (text.size() > longest_name)
@@ -172,7 +169,7 @@ class Validator {
                 std::vector<std::string> names;
                 for (const TerminalInfo& info : kind.terminals) names.emplace_back(info.name);
                 add(FaultKind::unknown_key, part.ref + "." + joint.terminal,
-                    part.ref + ": a " + std::string(kind.title) + " has no terminal `" + joint.terminal + "`.",
+                    part.ref + ": " + with_article(kind.title) + " has no terminal `" + joint.terminal + "`.",
                     "Its terminals are " + quoted_list(names) + ".");
             }
         if (part.terminals.size() != kind.terminals.size())

@@ -12,6 +12,17 @@ std::string quoted_list(const std::vector<std::string>& names) {
     return names.size() > most ? text + ", …" : text;
 }
 
+std::string with_article(std::string_view noun) {
+    const bool vowel = !noun.empty() && std::string_view("aeiou").find(noun.front()) != std::string_view::npos;
+    return (vowel ? "an " : "a ") + std::string(noun);
+}
+
+std::string printable(std::string_view text) {
+    std::string shown;
+    for (const char c : text) shown += static_cast<unsigned char>(c) < 0x20 || c == 0x7f ? '?' : c;
+    return shown;
+}
+
 Fault unknown_kind(const std::string& ref, const std::string& kind) {
     std::vector<std::string> names;
     for (const PartKind* known : part_kinds()) names.emplace_back(known->name);
@@ -25,7 +36,7 @@ Fault unknown_parameter(const std::string& ref, const PartKind& kind, const std:
     std::string list;
     for (const ParameterInfo& info : kind.parameters) list += (list.empty() ? "" : ", ") + std::string(info.name);
     return {FaultKind::unknown_key, ref + "." + parameter,
-            ref + ": a " + std::string(kind.title) + " has no `" + parameter + "`.",
+            ref + ": " + with_article(kind.title) + " has no `" + parameter + "`.",
             "Its parameters are " + list + "; every part also takes tolerance, tempco and spread."};
 }
 

@@ -7,6 +7,10 @@ namespace sinewright {
 
 /// "`fb`, `gnd` and `out`"; at most 12 names, then "…".
 std::string quoted_list(const std::vector<std::string>& names);
+/// "an op-amp", "a resistor".
+std::string with_article(std::string_view noun);
+/// Text from a file made fit for a message or a terminal: control characters become "?".
+std::string printable(std::string_view text);
 
 Fault unknown_kind(const std::string& ref, const std::string& kind);
 Fault unknown_parameter(const std::string& ref, const PartKind& kind, const std::string& parameter);

@@ -51,6 +51,14 @@ void count_both_ways(const LoopGain& loop, const SmallSignal& small, LoopFinding
     }
 }
 
+/// The op-amp whose output lies on the cut's net: the usual reason why a loop gain has no end. Empty: none does.
+std::string opamp_driving(const Design& design, const Cut& cut) {
+    const auto net = design.find(cut.part)->net_at(cut.terminal);
+    for (const Part& part : design.parts)
+        if (part.kind == "opamp" && part.net_at("out") == net) return part.ref;
+    return "";
+}
+
 void find_loop_gain(const Design& design, Findings& findings) {
     const Vector& x = findings.operating_point->x;
     LoopFinding found;
@@ -74,6 +82,9 @@ void find_loop_gain(const Design& design, Findings& findings) {
     if (!loop) {
         Fault fault = loop.fault();
         fault.where = found.cut.part + "." + found.cut.terminal;
+        if (const std::string driver = opamp_driving(design, found.cut);
+            fault.kind == FaultKind::no_loop_gain && !driver.empty())
+            fault.sentence = "At this cut the loop gain has no end: all the gain is inside " + driver + ".";
         if (const auto better = choose_cut(design, x, *findings.small_signal))
             fault.remedy = "Cut at " + better->cut.part + " " + better->cut.terminal + " instead.";
         findings.loop.faults = {std::move(fault)};

@@ -91,7 +91,8 @@ template <class T, class ToJson> void section(Json& j, const char* key, const St
         j[key] = to_json(*stage);
     } else if (!stage.faults.empty()) {
         j[key] = nullptr;
-        j[std::string(key) + "_reason"] = stage.faults.front().sentence;
+        const Fault& fault = stage.faults.front();
+        j[std::string(key) + "_reason"] = fault.sentence + (fault.remedy.empty() ? "" : " " + fault.remedy);
     }
 }
 

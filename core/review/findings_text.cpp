@@ -1,4 +1,5 @@
 /// Findings, curves and part kinds as text for people.
+#include "core/design/words.hpp"
 #include "core/quantity/quantity.hpp"
 #include "core/review/describe.hpp"
 #include "core/review/verdict.hpp"
@@ -80,7 +81,7 @@ std::string target_text(const TargetFinding& target) {
 } // namespace
 
 std::string findings_text(const Findings& findings, const Design& design) {
-    std::string text = design.title.empty() ? "" : design.title + "\n\n";
+    std::string text = design.title.empty() ? "" : printable(design.title) + "\n\n";
     for (const Fault& fault : findings.faults) text += fault_text(fault);
     if (findings.operating_point) text += operating_point_text(*findings.operating_point, findings.nets);
     for (const Fault& fault : findings.operating_point.faults) text += fault_text(fault);
@@ -97,8 +98,10 @@ std::string curves_csv(const LoopCurve& curve) {
     std::string text = "frequency_hz,re,im,gain_db,phase_deg\n";
     for (std::size_t k = 0; k < curve.gain.size(); ++k) {
         const Complex l = curve.gain[k];
-        text += fmt::format("{},{},{},{},{}\n", curve.frequency_hz[k], l.real(), l.imag(), 20 * std::log10(std::abs(l)),
-                            std::arg(l) * 180 / std::numbers::pi);
+        const double gain_db = 20 * std::log10(std::abs(l));
+        text +=
+            fmt::format("{},{},{},{},{}\n", curve.frequency_hz[k], l.real(), l.imag(),
+                        std::isfinite(gain_db) ? fmt::format("{}", gain_db) : "", std::arg(l) * 180 / std::numbers::pi);
     }
     return text;
 }

@@ -1,6 +1,8 @@
 /// Findings → Verdict: targets against values, the headline and its one reason.
 #include "core/review/verdict.hpp"
 #include "core/quantity/quantity.hpp"
+#include <algorithm>
+#include <cctype>
 #include <cmath>
 
 namespace sinewright {
@@ -37,18 +39,13 @@ std::string margin_words(const Findings& findings) {
                           : "the loop makes up " + plain_text(-margin_db, 2) + " dB less than it loses";
 }
 
-std::string capital(std::string text) {
-    if (!text.empty() && text[0] >= 'a' && text[0] <= 'z') text[0] = static_cast<char>(text[0] - 'a' + 'A');
-    return text;
-}
-
 /// What an outcome says in one sentence.
 std::string outcome_sentence(const Findings& findings) {
     const SmallSignal& small = *findings.small_signal;
     const std::string margin = margin_words(findings);
     switch (small.outcome) {
     case Outcome::latches:
-        return "Latches: positive feedback wins at DC, and the output runs to one side and stays there.";
+        return "Positive feedback wins at DC: the output runs to one side and stays there.";
     case Outcome::decays:
         return margin.empty() || findings.loop->barkhausen->startup_margin_db > 0
                    ? "Decays: every natural frequency dies away."
@@ -73,9 +70,14 @@ std::string first_missed(const Findings& findings) {
     return "";
 }
 
-void judge_without_targets(Findings& findings, bool starts) {
-    findings.verdict = starts ? Verdict::meets : Verdict::misses;
-    if (starts) findings.headline = findings.small_signal->frequency_hz ? "Starts" : "Starts, overdriven";
+/// A design without targets meets when it starts: the outcome itself is the headline, "Starts" before the colon.
+void judge_without_targets(Findings& findings) {
+    findings.verdict = Verdict::meets;
+    const std::string sentence = findings.main_reason;
+    const auto colon = sentence.find(": ");
+    findings.headline = sentence.substr(0, colon);
+    findings.main_reason = sentence.substr(colon + 2);
+    findings.main_reason[0] = static_cast<char>(std::toupper(static_cast<unsigned char>(findings.main_reason[0])));
 }
 
 } // namespace
@@ -150,20 +152,20 @@ void reach_verdict(Findings& findings) {
             findings.small_signal->outcome == Outcome::latches ? "Latches: does not oscillate" : "Does not start";
         return;
     }
-    if (all == 0) return judge_without_targets(findings, starts);
+    if (all == 0) return judge_without_targets(findings);
     if (missed > 0) {
         findings.verdict = Verdict::misses;
         findings.headline = "Misses " + std::to_string(missed) + " of " + std::to_string(all);
         if (const std::string why = first_missed(findings); !why.empty()) findings.main_reason = why;
     } else if (unknown > 0) {
         findings.verdict = Verdict::unknown;
-        findings.headline = "Can't tell " + std::to_string(unknown) + " of " + std::to_string(all);
-        for (const TargetFinding& target : findings.targets)
-            if (!target.met) findings.main_reason = result_title(target.name) + ": " + target.reason;
+        findings.headline = "Can't tell: " + std::to_string(unknown) + " of " + std::to_string(all) + " not known";
+        const auto first = std::find_if(findings.targets.begin(), findings.targets.end(),
+                                        [](const TargetFinding& target) { return !target.met; });
+        findings.main_reason = result_title(first->name) + ": " + first->reason;
     } else {
         findings.verdict = Verdict::meets;
         findings.headline = all == 1 ? "Meets its target" : "Meets all " + std::to_string(all);
-        findings.main_reason = capital(findings.main_reason);
     }
 }
 
