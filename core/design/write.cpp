@@ -51,8 +51,10 @@ Json json_of(const Part& part) {
         terminals[joint.terminal] = joint.net ? Json(*joint.net) : Json(nullptr);
     j["terminals"] = terminals;
     if (part.place)
-        j["place"] = {
-            {"x", number(part.place->x)}, {"y", number(part.place->y)}, {"turn", part.place->turn}, {"flip", part.place->flip}};
+        j["place"] = {{"x", number(part.place->x)},
+                      {"y", number(part.place->y)},
+                      {"turn", part.place->turn},
+                      {"flip", part.place->flip}};
     return j;
 }
 
@@ -89,7 +91,8 @@ Json json_of(const Target& target) {
 
 Json json_of(const Conditions& conditions) {
     Json j = Json::object();
-    if (conditions.temperature_c) j["temperature_c"] = {number((*conditions.temperature_c)[0]), number((*conditions.temperature_c)[1])};
+    if (conditions.temperature_c)
+        j["temperature_c"] = {number((*conditions.temperature_c)[0]), number((*conditions.temperature_c)[1])};
     if (conditions.supply) j["supply"] = json_of(*conditions.supply);
     return j;
 }

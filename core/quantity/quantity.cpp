@@ -135,6 +135,12 @@ bool take_scale(std::string_view text, std::string_view unit, Number& number, in
     if (text.empty()) return true;
     if ((unit.empty() || unit == "1/K") && is_ratio(text, power)) return true;
     // Letter code: the letter, then only digits, and no point before.
+    const std::string_view written = text;
+    // A unit may stand behind a code too: 1m5H, 4k7Ω.
+    if (!unit.empty() && text.size() > unit.size() && text.ends_with(unit)) {
+        const char before = text[text.size() - unit.size() - 1];
+        if (before >= '0' && before <= '9') text.remove_suffix(unit.size());
+    }
     if (!number.point && !number.has_exponent) {
         const std::size_t tail =
             std::find_if(text.begin(), text.end(), [](char c) { return c >= '0' && c <= '9'; }) - text.begin();
@@ -155,7 +161,7 @@ bool take_scale(std::string_view text, std::string_view unit, Number& number, in
             return !number.digits.empty();
         }
     }
-    text = trimmed(text);
+    text = trimmed(written);
     if (!unit.empty() && is_unit(text, unit)) return true;
     for (const Prefix& prefix : prefixes) {
         if (prefix.text.empty() || !text.starts_with(prefix.text)) continue;
@@ -174,7 +180,8 @@ void shortest(double value, std::string& digits, int& exponent) {
     digits.clear();
     for (const char c : written.substr(0, e))
         if (c >= '0' && c <= '9') digits += c;
-    exponent = std::atoi(written.substr(e + 1).data());
+    const char* from = text.data() + e + 1 + (text[e + 1] == '+');
+    std::from_chars(from, end.ptr, exponent);
     while (digits.size() > 1 && digits.back() == '0') digits.pop_back();
 }
 
