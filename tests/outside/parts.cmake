@@ -6,3 +6,8 @@ add_test(NAME "outside: batch program on good and bad input"
   COMMAND ${SYSTEM_PYTHON3} -B ${CMAKE_CURRENT_LIST_DIR}/batch_test.py -v)
 set_tests_properties("outside: batch program on good and bad input" PROPERTIES
   ENVIRONMENT "SINEWRIGHT_BATCH=$<TARGET_FILE:sinewright-batch>")
+
+add_test(NAME "outside: second opinion on operating point, natural frequencies and loop gain"
+  COMMAND ${SYSTEM_PYTHON3} -B ${CMAKE_CURRENT_LIST_DIR}/second_opinion.py)
+set_tests_properties("outside: second opinion on operating point, natural frequencies and loop gain" PROPERTIES
+  ENVIRONMENT "SINEWRIGHT_BATCH=$<TARGET_FILE:sinewright-batch>")
