@@ -16,7 +16,9 @@ class Gesture {
     virtual bool key(const QKeyEvent&) { return false; }
     virtual void paint(QPainter&) const {}
     virtual bool by_click() const { return false; } ///< lives without a pressed button
-    virtual bool over() const { return false; }     ///< a key has ended it
+    /// Remembers places in the drawing, so it ends when the design changes under it.
+    virtual bool knows_drawing() const { return false; }
+    virtual bool over() const { return false; } ///< a key has ended it
 };
 using GesturePtr = std::unique_ptr<Gesture>;
 

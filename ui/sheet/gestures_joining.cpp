@@ -43,6 +43,7 @@ class DragJoin : public Gesture {
         return true;
     }
     void abandon() override { desk_.end_preview(), desk_.repaint(); }
+    bool knows_drawing() const override { return true; }
     void paint(QPainter& painter) const override {
         painter.setPen(QPen(theme().accent, 2, takes() ? Qt::SolidLine : Qt::DashLine, Qt::RoundCap));
         painter.setBrush(Qt::NoBrush);
@@ -104,6 +105,7 @@ class KeyJoin : public Gesture {
     void move(QPointF, Qt::KeyboardModifiers) override {}
     bool finish(QPointF, Qt::KeyboardModifiers) override { return true; }
     void abandon() override { desk_.repaint(); }
+    bool knows_drawing() const override { return true; }
     bool key(const QKeyEvent& event) override {
         switch (event.key()) {
         case Qt::Key_Right:

@@ -24,6 +24,7 @@ InlineField::InlineField(QWidget* parent) : QFrame(parent), edit_(new QLineEdit(
     column->addWidget(list_);
     list_->setFocusPolicy(Qt::NoFocus);
     list_->setFrameShape(QFrame::NoFrame);
+    list_->viewport()->setAutoFillBackground(false);
     list_->setHorizontalScrollBarPolicy(Qt::ScrollBarAlwaysOff);
     list_->setVerticalScrollBarPolicy(Qt::ScrollBarAlwaysOff);
     list_->setAccessibleName(tr("What it can mean"));
@@ -59,7 +60,7 @@ void InlineField::refresh_offers() {
 void InlineField::fit() {
     int width = std::max(narrowest_px, edit_->fontMetrics().horizontalAdvance(edit_->text()) + 40);
     for (int i = 0; i < list_->count(); ++i)
-        width = std::max(width, list_->fontMetrics().horizontalAdvance(list_->item(i)->text()) + 32);
+        width = std::max(width, list_->fontMetrics().horizontalAdvance(list_->item(i)->text()) + 44);
     width = std::min(width, widest_px);
     list_->setFixedHeight(list_->count() * line_height_px + 4);
     for (int i = 0; i < list_->count(); ++i) list_->item(i)->setSizeHint(QSize(width - 12, line_height_px));

@@ -118,7 +118,7 @@ void mark_fault(const Fault& fault, const Drawing& drawing, Overlay& overlay) {
         const QPointF badge = badge_of_net(drawing, net);
         if (badge.isNull()) return;
         overlay.faulty_nets.insert(net);
-        overlay.faults.push_back({badge, sentence_of(fault)});
+        overlay.faults.push_back({badge, sentence_of(fault), false});
         return;
     }
     const auto dot = fault.where.find('.');
@@ -126,11 +126,14 @@ void mark_fault(const Fault& fault, const Drawing& drawing, Overlay& overlay) {
         drawing, {fault.where.substr(0, dot), dot == std::string::npos ? "" : fault.where.substr(dot + 1)});
     if (part < 0) return;
     const PartShape& shape = drawing.parts()[static_cast<std::size_t>(part)];
+    if (port >= 0 && fault.kind == FaultKind::unconnected_terminal) {
+        const QPointF tip = sheet_point(shape.ports[static_cast<std::size_t>(port)].at);
+        overlay.faults.push_back({tip, sentence_of(fault), true});
+        return;
+    }
     overlay.faulty_parts.insert(part);
-    const QPointF badge = port >= 0 ? sheet_point(shape.ports[static_cast<std::size_t>(port)].at) +
-                                          direction(shape.ports[static_cast<std::size_t>(port)].out) * 12
-                                    : shape.body.topRight() + QPointF(8, -8);
-    overlay.faults.push_back({badge, sentence_of(fault)});
+    const QPointF badge = shape.body.topRight() + QPointF(8, -8);
+    overlay.faults.push_back({badge, sentence_of(fault), false});
 }
 
 } // namespace

@@ -25,6 +25,7 @@ struct RibbonArrow {
 struct FaultMark {
     QPointF badge;
     QString sentence;
+    bool open_end = false; ///< an end not joined yet: a ring, no alarm while a drawing grows
 };
 
 struct Overlay {

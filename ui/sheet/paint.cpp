@@ -106,6 +106,7 @@ void paint_cut(QPainter& painter, const CutMark& mark, const Theme& theme) {
 }
 
 void paint_fault(QPainter& painter, const FaultMark& fault, const Theme& theme) {
+    if (fault.open_end) return paint_ring(painter, fault.badge, theme.misses, theme.sheet, 4);
     painter.setPen(round_pen(theme.misses, 1.6));
     painter.setBrush(theme.misses);
     const QPointF corners[] = {fault.badge + QPointF(0, -7), fault.badge + QPointF(7, 6), fault.badge + QPointF(-7, 6)};
@@ -144,7 +145,9 @@ void paint_sheet(QPainter& painter, const Drawing& drawing, const Overlay& overl
         if (emphasis.selected.contains(part.ref)) {
             painter.setPen(QPen(theme.accent, 1.5));
             painter.setBrush(Qt::NoBrush);
-            painter.drawRoundedRect(part.reach().adjusted(-6, -6, 6, 6), 8, 8);
+            const PartText& text = drawing.texts()[p];
+            const QRectF whole = part.reach() | text.ref_box | text.value_box;
+            painter.drawRoundedRect(whole.adjusted(-6, -6, 6, 6), 8, 8);
         }
         const QColor ink = overlay.faulty_parts.contains(static_cast<int>(p)) ? theme.misses : theme.ink;
         paint_part(painter, part, theme, ink, line_px);

@@ -32,12 +32,7 @@ SheetView::SheetView(Document& document, Analyst& analyst, QWidget* parent)
     wheel_rest_.setSingleShot(true);
     wheel_rest_.setInterval(wheel_rest_ms);
     connect(&wheel_rest_, &QTimer::timeout, this, [this] { desk_.document.end_merge(); });
-    connect(&document, &Document::changed, this, [this] {
-        if (desk_.document.history().count() == 0) desk_.forget_places(); // another design: its parts only share names
-        hovered_ = {};
-        desk_.take_over();
-        describe();
-    });
+    connect(&document, &Document::changed, this, &SheetView::take_over_document);
     connect(&document, &Document::replaced, this, [this] {
         end_gesture(true);
         field_->drop();
@@ -93,11 +88,16 @@ void SheetView::paintEvent(QPaintEvent*) {
         paint_ring(painter, sheet_point(desk_.part(hovered_.part).ports[static_cast<std::size_t>(hovered_.port)].at),
                    theme().accent, theme().sheet, 6);
     if (gesture_) gesture_->paint(painter);
-    if (!hasFocus()) return;
+    if (!hasFocus() || !focus_by_key_) return;
     painter.resetTransform();
     painter.setPen(QPen(theme().accent, 2));
     painter.setBrush(Qt::NoBrush);
     painter.drawRect(QRectF(rect()).adjusted(1, 1, -1, -1));
+}
+
+void SheetView::focusInEvent(QFocusEvent* event) {
+    focus_by_key_ = event->reason() == Qt::TabFocusReason || event->reason() == Qt::BacktabFocusReason;
+    QWidget::focusInEvent(event);
 }
 
 void SheetView::arm_kind(const QString& kind) {
@@ -186,6 +186,14 @@ void SheetView::describe() {
     update();
 }
 
+void SheetView::take_over_document() {
+    if (desk_.document.history().count() == 0) desk_.forget_places(); // another design: its parts only share names
+    if (gesture_ && !gesture_acts_ && gesture_->knows_drawing()) end_gesture(true);
+    hovered_ = pressed_ = {};
+    desk_.take_over();
+    describe();
+}
+
 void SheetView::begin(GesturePtr gesture) {
     desk_.document.end_merge();
     gesture_ = std::move(gesture);
@@ -199,6 +207,15 @@ void SheetView::end_gesture(bool abandon) {
         emit armed_changed(armed_);
     }
     update();
+}
+
+/// True: the gesture is over.
+bool SheetView::finish_gesture(QPointF at, Qt::KeyboardModifiers modifiers) {
+    gesture_acts_ = true;
+    const bool over = gesture_->finish(at, modifiers);
+    gesture_acts_ = false;
+    if (over) end_gesture(false);
+    return over;
 }
 
 /// Esc: the innermost thing that is not at rest comes to rest. False: everything is.

@@ -61,6 +61,7 @@ class SheetView : public QWidget {
     void mouseReleaseEvent(QMouseEvent*) override;
     void mouseDoubleClickEvent(QMouseEvent*) override;
     void leaveEvent(QEvent*) override;
+    void focusInEvent(QFocusEvent*) override;
     void wheelEvent(QWheelEvent*) override;
     void keyPressEvent(QKeyEvent*) override;
     void contextMenuEvent(QContextMenuEvent*) override;
@@ -73,9 +74,11 @@ class SheetView : public QWidget {
   private:
     void begin(GesturePtr gesture);
     void end_gesture(bool abandon);
+    bool finish_gesture(QPointF at, Qt::KeyboardModifiers modifiers);
     bool back_to_rest();
+    void take_over_document();
     void press_on(const Hit& hit, QPointF at, Qt::KeyboardModifiers modifiers);
-    void click_on(const Hit& hit, QPointF at);
+    void click_on(const Hit& hit, Qt::KeyboardModifiers modifiers);
     void drag_from(const Hit& hit);
     void offer_at_terminal(const Hit& hit);
     void open_typed(const QString& first);
@@ -99,12 +102,13 @@ class SheetView : public QWidget {
 
     Desk desk_;
     GesturePtr gesture_;
+    bool gesture_acts_ = false; ///< the change that comes is its own
     InlineField* field_;
     QTimer wheel_rest_; ///< closes the undo step of a wheel turn
     QString armed_;
     Hit hovered_, pressed_;
     QPointF pressed_at_, last_view_;
-    bool panning_ = false, pressed_was_selected_ = false, fitted_ = false;
+    bool focus_by_key_ = false, panning_ = false, pressed_was_selected_ = false, fitted_ = false;
     int wheel_left_ = 0; ///< eighths of a degree not yet stepped
     double zoom_ = 1, line_px_ = 2;
     QPointF origin_;

@@ -133,12 +133,15 @@ void SheetView::select_all() {
 }
 
 void SheetView::contextMenuEvent(QContextMenuEvent* event) {
-    if (back_to_rest() && gesture_) return;
-    const QPointF at = to_sheet(event->pos());
+    if (gesture_) return end_gesture(true);
+    QPointF at = to_sheet(event->pos());
+    const int chosen = desk_.selected_part();
+    const bool by_key = event->reason() == QContextMenuEvent::Keyboard && chosen >= 0;
+    if (by_key) at = desk_.part(chosen).body.center();
     QMenu menu(this);
     menu.setObjectName(QStringLiteral("sheet_menu"));
     fill_menu(menu, desk_.hit(at, 12 / zoom_), at);
-    menu.exec(event->globalPos());
+    menu.exec(by_key ? mapToGlobal(to_view(at).toPoint()) : event->globalPos());
 }
 
 void SheetView::fill_menu(QMenu& menu, const Hit& hit, QPointF at) {

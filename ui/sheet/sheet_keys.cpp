@@ -35,7 +35,11 @@ void SheetView::keyPressEvent(QKeyEvent* event) {
 
 bool SheetView::gesture_key(QKeyEvent& event) {
     if (event.key() == Qt::Key_Escape) return back_to_rest();
-    if (!gesture_ || !gesture_->key(event)) return false;
+    if (!gesture_) return false;
+    gesture_acts_ = true;
+    const bool taken = gesture_->key(event);
+    gesture_acts_ = false;
+    if (!taken) return false;
     if (gesture_->over()) end_gesture(false);
     update();
     return true;

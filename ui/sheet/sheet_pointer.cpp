@@ -28,7 +28,7 @@ void SheetView::mousePressEvent(QMouseEvent* event) {
     }
     if (event->button() != Qt::LeftButton) return;
     if (gesture_ && gesture_->by_click()) {
-        if (gesture_->finish(at, event->modifiers())) end_gesture(false);
+        finish_gesture(at, event->modifiers());
         return;
     }
     pressed_at_ = event->position();
@@ -105,17 +105,18 @@ void SheetView::mouseReleaseEvent(QMouseEvent* event) {
     if (event->button() != Qt::LeftButton) return;
     const QPointF at = to_sheet(event->position());
     if (gesture_ && !gesture_->by_click()) {
-        if (gesture_->finish(at, event->modifiers())) end_gesture(false);
-        if (is_part(pressed_.on) || pressed_.on == Hit::On::nothing) pressed_ = {};
+        finish_gesture(at, event->modifiers());
+        pressed_ = {};
         hover(at);
         return;
     }
-    if (!gesture_) click_on(pressed_, at);
+    const Hit clicked = pressed_;
     pressed_ = {};
+    if (!gesture_) click_on(clicked, event->modifiers());
 }
 
-void SheetView::click_on(const Hit& hit, QPointF) {
-    if (hit.on == Hit::On::value && pressed_was_selected_)
+void SheetView::click_on(const Hit& hit, Qt::KeyboardModifiers modifiers) {
+    if (hit.on == Hit::On::value && modifiers == Qt::NoModifier)
         edit_value(hit.part);
     else if (is_part(hit.on) && pressed_was_selected_ && desk_.document.selection().size() > 1)
         desk_.document.select({text_of(desk_.part(hit.part).ref)});
@@ -144,7 +145,9 @@ void SheetView::offer_at_terminal(const Hit& hit) {
         if (name.empty()) {
             desk_.try_edit(tr("Ground %1").arg(text_of(terminal.part)), [&](Design& d) { return ground(d, terminal); });
         } else {
-            const PartShape& shape = desk_.part(drawing().part_index(terminal.part));
+            const int part = drawing().part_index(terminal.part);
+            if (part < 0) return {};
+            const PartShape& shape = desk_.part(part);
             const PlacedPort& end = *shape.port(terminal.terminal);
             const QPointF at = sheet_point(stepped(end.at, end.out, 2));
             desk_.edit(tr("Name the net at %1").arg(terminal_text(terminal)), [&](Design& d) {
@@ -258,8 +261,7 @@ void SheetView::dragLeaveEvent(QDragLeaveEvent*) { end_gesture(true); }
 
 void SheetView::dropEvent(QDropEvent* event) {
     if (!gesture_) return;
-    gesture_->finish(to_sheet(event->position()), Qt::NoModifier);
-    end_gesture(false);
+    finish_gesture(to_sheet(event->position()), Qt::NoModifier);
     setFocus(Qt::MouseFocusReason);
     event->acceptProposedAction();
 }

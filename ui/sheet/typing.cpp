@@ -45,7 +45,7 @@ void add_numbers(const QString& typed, std::vector<Meaning>& meanings) {
         const bool usual = value->si >= candidate.usual_from && value->si <= candidate.usual_to;
         (usual ? meanings : unusual).push_back({std::string(candidate.kind), value, words_for(candidate.kind, typed)});
     }
-    meanings.insert(meanings.end(), unusual.begin(), unusual.end());
+    if (meanings.empty()) meanings = unusual; // 4k7 farad is nobody's wish
 }
 
 /// A word, then perhaps a value: "op", "lamp", "pot 10k".

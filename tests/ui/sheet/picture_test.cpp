@@ -4,6 +4,7 @@
 #include <QApplication>
 #include <QElapsedTimer>
 #include <QImage>
+#include <QKeyEvent>
 #include <QMouseEvent>
 #include <QPainter>
 #include <catch2/catch.hpp>
@@ -71,6 +72,44 @@ TEST_CASE("the Wien loop placed by hand", "[.picture]") {
     }
 }
 
+TEST_CASE("the sheet in the middle of things", "[.picture]") {
+    ThemeKeeper::instance().choose(ThemeChoice::light);
+    Document document;
+    Analyst analyst(document);
+    SheetView sheet(document, analyst);
+    sheet.resize(920, 736);
+    sheet.show();
+    Design d = test::wien_loop();
+    d.parts.push_back(starting_part(d, "jfet", {700, 560, 0, false}));
+    document.set_new(d);
+    analyst.wait_until_current(5000);
+    const auto end = [&](const char* ref, const char* terminal) {
+        const PartShape& part = sheet.drawing().parts()[static_cast<std::size_t>(sheet.drawing().part_index(ref))];
+        return sheet.to_view(sheet_point(part.port(terminal)->at));
+    };
+    const auto send = [&](QEvent::Type type, QPointF at, Qt::MouseButton button, Qt::MouseButtons held) {
+        QMouseEvent event(type, at, at, button, held, {});
+        QApplication::sendEvent(&sheet, &event);
+    };
+    document.select({"R1", "C1"});
+    sheet.grab().save("chosen.png");
+    send(QEvent::MouseButtonPress, end("J1", "g"), Qt::LeftButton, Qt::LeftButton);
+    send(QEvent::MouseMove, end("J1", "g") - QPointF(60, -40), Qt::NoButton, Qt::LeftButton);
+    sheet.grab().save("joining-free.png");
+    send(QEvent::MouseMove, end("R5", "a") + QPointF(3, 3), Qt::NoButton, Qt::LeftButton);
+    sheet.grab().save("joining-end.png");
+    send(QEvent::MouseButtonRelease, end("J1", "g") - QPointF(100, -60), Qt::LeftButton, Qt::NoButton);
+    sheet.grab().save("stub.png");
+    sheet.arm_kind("lamp");
+    send(QEvent::MouseMove, QPointF(160, 500), Qt::NoButton, Qt::NoButton);
+    sheet.grab().save("placing.png");
+    sheet.arm_kind({});
+    QKeyEvent four(QEvent::KeyPress, Qt::Key_4, {}, "4");
+    QApplication::sendEvent(&sheet, &four);
+    sheet.findChild<QLineEdit*>("inline_edit")->setText("4k7");
+    sheet.grab().save("typing.png");
+}
+
 TEST_CASE("time of a frame while a part is dragged in a design of 60 parts", "[.bench]") {
     Document document;
     Analyst analyst(document);
@@ -102,4 +141,24 @@ TEST_CASE("time of a frame while a part is dragged in a design of 60 parts", "[.
     send(QEvent::MouseButtonRelease, from, Qt::LeftButton);
     std::cout << "a frame of dragging: " << moving / frames << " ms to lay (at most " << most_moving << "), "
               << painting / frames << " ms to paint (at most " << most_painting << ")\n";
+}
+
+TEST_CASE("time to open a design of 2000 parts, with and without places", "[.bench]") {
+    Design d = many_loops(200);
+    REQUIRE(d.parts.size() == max_parts);
+    for (const bool placed : {true, false}) {
+        if (!placed)
+            for (Part& part : d.parts) part.place.reset();
+        Document document;
+        Analyst analyst(document);
+        SheetView sheet(document, analyst);
+        sheet.resize(920, 736);
+        QElapsedTimer timer;
+        timer.start();
+        document.set_new(d);
+        const double laid = double(timer.nsecsElapsed()) / 1e6;
+        document.edit("Value", [](Design& design) { (void)step_value(design, design.parts[0].ref, 1, false); });
+        std::cout << (placed ? "placed" : "not placed") << ": " << laid << " ms to open, "
+                  << double(timer.nsecsElapsed()) / 1e6 - laid << " ms for an edit\n";
+    }
 }

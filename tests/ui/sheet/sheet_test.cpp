@@ -3,6 +3,8 @@
 #include "ui/sheet/sheet.hpp"
 #include <QAccessible>
 #include <QApplication>
+#include <QDropEvent>
+#include <QMimeData>
 #include <QSignalSpy>
 #include <QWheelEvent>
 #include <QtTest>
@@ -270,4 +272,73 @@ TEST_CASE("parts are copied, cut and pasted", "[sheet][ordinary]") {
     bench.key(Qt::Key_X, Qt::ControlModifier);
     CHECK(bench.design() == test::wien_loop());
     bench.key(Qt::Key_D, Qt::ControlModifier);
+}
+
+TEST_CASE("an undo in the middle of joining by keys ends the joining and breaks nothing", "[sheet][tricky]") {
+    Bench bench;
+    bench.document.set_new(test::three_resistors());
+    bench.drop("lamp", 240, 200);
+    bench.document.select({bench.sheet.drawing().parts()[3].ref.c_str()});
+    bench.key(Qt::Key_J, Qt::ControlModifier);
+    bench.document.undo(); // the lamp is gone
+    bench.sheet.grab();
+    bench.key(Qt::Key_Return);
+    CHECK(bench.design() == test::three_resistors());
+}
+
+TEST_CASE("a click on a value opens it, typing nonsense is refused and changes nothing", "[sheet][errors]") {
+    Bench bench;
+    bench.document.set_new(test::wien_loop());
+    const PartText& text = bench.sheet.drawing().texts()[0];
+    bench.click(bench.sheet.to_view(text.value_box.center()).toPoint());
+    REQUIRE(bench.field().isVisible());
+    CHECK(bench.field().text() == "10k");
+    bench.field().setText("ten");
+    QTest::keyClick(&bench.field(), Qt::Key_Return);
+    CHECK(bench.field().isVisible()); // still open, to be mended
+    CHECK(bench.document.history().count() == 0);
+    QTest::keyClick(&bench.field(), Qt::Key_Escape);
+    CHECK_FALSE(bench.field().isVisible());
+}
+
+TEST_CASE("dragging to empty sheet leaves a named stub, dropping on a join joins to its net", "[sheet][ordinary]") {
+    Bench bench;
+    bench.document.set_new(test::wien_loop());
+    bench.drop("resistor", 800, 560);
+    const char* ref = "R6";
+    REQUIRE(bench.design().find(ref));
+    bench.drag(bench.end(ref, "b"), bench.end(ref, "b") + QPoint(60, 60));
+    REQUIRE(bench.design().labels.size() == 1);
+    CHECK(bench.design().labels[0].stub_of == TerminalRef{ref, "b"});
+    const Join* x = nullptr;
+    for (const Join& join : bench.sheet.drawing().joins())
+        if (join.net == "x") x = &join;
+    REQUIRE(x);
+    const auto& corners = x->route.runs.back().corners;
+    bench.drag(bench.end(ref, "a"),
+               bench.sheet.to_view((sheet_point(corners[0]) + sheet_point(corners[1])) / 2).toPoint());
+    CHECK(bench.design().find(ref)->net_at("a") == "x");
+}
+
+TEST_CASE("a box chooses the parts inside it, Ctrl+A all of them", "[sheet][ordinary]") {
+    Bench bench;
+    bench.document.set_new(test::wien_loop());
+    bench.drag(bench.view(60, 60), bench.view(300, 220));
+    CHECK(bench.document.selection() == QStringList{"R2", "C2"});
+    bench.key(Qt::Key_A, Qt::ControlModifier);
+    CHECK(bench.document.selection().size() == 10);
+}
+
+TEST_CASE("a part dragged from the shelf is dropped where it is let go", "[sheet][ordinary]") {
+    Bench bench;
+    QMimeData mime;
+    mime.setData(kind_mime, "capacitor");
+    const QPoint at = bench.view(200, 100);
+    QDragEnterEvent enter(at, Qt::CopyAction, &mime, Qt::LeftButton, {});
+    QApplication::sendEvent(&bench.sheet, &enter);
+    QDropEvent drop(at, Qt::CopyAction, &mime, Qt::LeftButton, {});
+    QApplication::sendEvent(&bench.sheet, &drop);
+    REQUIRE(bench.design().parts.size() == 1);
+    CHECK(bench.design().parts[0].kind == "capacitor");
+    CHECK(bench.design().parts[0].place->x == 200);
 }
