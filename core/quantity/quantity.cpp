@@ -173,7 +173,7 @@ bool take_scale(std::string_view text, std::string_view unit, Number& number, in
 
 /// Shortest digits that read back as the same double, as digits and the power of ten of the first.
 void shortest(double value, std::string& digits, int& exponent) {
-    std::array<char, 40> text;
+    std::array<char, 40> text{}; // atoi below needs the zero behind the number
     const auto end = std::to_chars(text.data(), text.data() + text.size(), value, std::chars_format::scientific);
     const std::string_view written(text.data(), static_cast<std::size_t>(end.ptr - text.data()));
     const std::size_t e = written.find('e');

@@ -19,6 +19,10 @@ double distance(QPointF p, QPointF a, QPointF b) {
 
 QString text_of(const std::string& s) { return QString::fromStdString(s); }
 
+QString named(const std::vector<std::string>& refs) {
+    return refs.size() == 1 ? text_of(refs.front()) : QObject::tr("%n parts", nullptr, static_cast<int>(refs.size()));
+}
+
 void Desk::work_out_places() {
     const Design& shown = design();
     const bool missing = std::any_of(shown.parts.begin(), shown.parts.end(),
@@ -71,16 +75,21 @@ void Desk::lay_out(const QString& name, const Change& change, const QString& mer
         name, [&](Design& d) { fix_places(d, worked_out_), change(d); }, merge_key);
 }
 
-bool Desk::try_edit(const QString& name, const std::function<QString(Design&)>& change) {
+QString Desk::attempt(const QString& name, const std::function<QString(Design&)>& change, bool lays_out) {
     Design changed = document.design();
+    if (lays_out) fix_places(changed, worked_out_);
     const QString refusal = change(changed);
-    if (!refusal.isEmpty()) {
+    if (refusal.isEmpty())
+        edit(name, [&](Design& d) { d = std::move(changed); });
+    else
         end_preview();
-        if (say) say(refusal);
-        return false;
-    }
-    edit(name, [&](Design& d) { d = std::move(changed); });
-    return true;
+    return refusal;
+}
+
+bool Desk::try_edit(const QString& name, const std::function<QString(Design&)>& change) {
+    const QString refusal = attempt(name, change);
+    if (!refusal.isEmpty() && say) say(refusal);
+    return refusal.isEmpty();
 }
 
 TerminalRef Desk::terminal(const Hit& hit) const {

@@ -43,8 +43,9 @@ class Desk {
     /// One undoable step. lay_out() also writes down the places worked out for parts that had none.
     void edit(const QString& name, const Change& change, const QString& merge_key = {});
     void lay_out(const QString& name, const Change& change, const QString& merge_key = {});
-    /// The same for a change that may refuse: then nothing happens but the reason being said. True: done.
-    bool try_edit(const QString& name, const std::function<QString(Design&)>& change);
+    /// The same for a change that may refuse: then nothing happens and the reason comes back; empty: done.
+    QString attempt(const QString& name, const std::function<QString(Design&)>& change, bool lays_out = false);
+    bool try_edit(const QString& name, const std::function<QString(Design&)>& change); ///< says the reason; true: done
 
     Hit hit(QPointF at, double reach_px) const;
     TerminalRef terminal(const Hit& hit) const;
@@ -63,5 +64,6 @@ class Desk {
 };
 
 QString text_of(const std::string& s);
+QString named(const std::vector<std::string>& refs); ///< "R3", "4 parts": in the names of steps
 
 } // namespace sinewright::ui

@@ -21,6 +21,7 @@ bool has_label(const Design& design, std::string_view net) {
 
 /// A net that its last terminal left is forgotten, one with a single terminal and no name of its own frees it.
 void tidy(Design& design, const std::string& net) {
+    if (net == design.output && terminals_on(design, net).empty()) design.output.clear();
     if (net == ground_net || net == design.output || !named_by_program(net) || has_label(design, net)) return;
     const TerminalRefs left = terminals_on(design, net);
     if (left.size() == 1) find_terminal(design, left.front())->net.reset();
@@ -45,6 +46,19 @@ Refusal shorted(const Design& design) {
         .arg(QString::fromStdString(design.output));
 }
 
+/// The first amplifier that gets joined drives the output, until the user says otherwise.
+void propose_output(Design& design) {
+    if (!design.output.empty()) return;
+    for (const Part& part : design.parts) {
+        const auto driven = part.net_at("out");
+        if (!driven || *driven == ground_net) continue;
+        const std::string net = *driven, name = "out";
+        design.output = net;
+        if (named_by_program(net) && terminals_on(design, name).empty()) rename_net(design, net, name);
+        return;
+    }
+}
+
 } // namespace
 
 Refusal join(Design& design, const TerminalRef& a, const TerminalRef& b) {
@@ -53,6 +67,7 @@ Refusal join(Design& design, const TerminalRef& a, const TerminalRef& b) {
     if (!first || !second) return QObject::tr("That end is gone.");
     if (!first->net && !second->net) {
         first->net = second->net = free_net(design);
+        propose_output(design);
         return {};
     }
     if (!second->net) return join_to_net(design, b, *first->net);
@@ -65,6 +80,7 @@ Refusal join_to_net(Design& design, const TerminalRef& terminal, const std::stri
     if (end->net == net) return QObject::tr("Those are joined already.");
     if (!end->net) {
         end->net = net;
+        propose_output(design);
         return {};
     }
     const std::string other = *end->net;

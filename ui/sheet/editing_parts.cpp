@@ -179,7 +179,6 @@ void flip_parts(Design& design, const std::vector<std::string>& refs, bool upsid
 Design excerpt(const Design& design, const std::vector<std::string>& refs) {
     Design part_of;
     part_of.title = design.title;
-    part_of.output = design.output;
     for (const Part& part : design.parts)
         if (chosen(refs, part.ref)) part_of.parts.push_back(part);
     for (const Part& part : part_of.parts)
@@ -235,7 +234,7 @@ Refusal set_value(Design& design, const std::string& ref, const QString& text) {
         put(*part, "model", std::string(ideal ? "ideal" : "macro"));
         if (ideal) return {};
     }
-    const auto si = parse_quantity(typed, parameter->unit);
+    const auto si = read_value(typed, parameter->unit);
     if (!si) return QString::fromStdString(si.fault().sentence);
     const bool allowed = parameter->range == Range::any || (parameter->range == Range::positive && *si > 0) ||
                          (parameter->range == Range::not_negative && *si >= 0) ||

@@ -10,10 +10,6 @@ namespace sinewright::ui {
 
 namespace {
 
-QString what_moves(const std::vector<std::string>& refs) {
-    return refs.size() == 1 ? text_of(refs.front()) : QObject::tr("%n parts", nullptr, static_cast<int>(refs.size()));
-}
-
 class MoveParts : public Gesture {
   public:
     MoveParts(Desk& desk, QPointF start) : desk_(desk), start_(start), refs_(desk.selected()) {}
@@ -28,7 +24,7 @@ class MoveParts : public Gesture {
         if (by_ == Cell{})
             desk_.end_preview();
         else
-            desk_.lay_out(QObject::tr("Move %1").arg(what_moves(refs_)),
+            desk_.lay_out(QObject::tr("Move %1").arg(named(refs_)),
                           [this](Design& d) { change(d), join_touching(d, refs_); });
         return true;
     }

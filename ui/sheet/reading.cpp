@@ -70,6 +70,13 @@ const ParameterInfo* shown_parameter(const Part& part) {
     return &kind->parameters[static_cast<std::size_t>(kind->main)];
 }
 
+Result<double> read_value(const std::string& typed, std::string_view unit) {
+    auto read = parse_quantity(typed, unit);
+    if (read || unit.empty() || !typed.ends_with(unit)) return read;
+    auto without_unit = parse_quantity(std::string_view(typed).substr(0, typed.size() - unit.size()), unit);
+    return without_unit ? without_unit : read;
+}
+
 QString value_text(const Part& part) {
     if (is_ideal(part)) return QObject::tr("ideal");
     const ParameterInfo* parameter = shown_parameter(part);

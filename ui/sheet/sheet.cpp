@@ -181,7 +181,8 @@ void SheetView::describe() {
     else if (parts.empty())
         setAccessibleDescription(tr("Empty. Type a value such as 10k, or choose a part on the shelf."));
     else
-        setAccessibleDescription(tr("%n parts", nullptr, static_cast<int>(parts.size())));
+        setAccessibleDescription(parts.size() == 1 ? tr("One part")
+                                                   : tr("%n parts", nullptr, static_cast<int>(parts.size())));
     report_selection(*this, part);
     update();
 }

@@ -13,9 +13,6 @@
 namespace sinewright::ui {
 
 namespace {
-QString named(const std::vector<std::string>& refs) {
-    return refs.size() == 1 ? text_of(refs.front()) : QObject::tr("%n parts", nullptr, static_cast<int>(refs.size()));
-}
 template <class F> void add(QMenu& menu, const QString& text, const QString& key, F&& act) {
     QAction* action = menu.addAction(key.isEmpty() ? text : text + QLatin1Char('\t') + key);
     QObject::connect(action, &QAction::triggered, &menu, std::forward<F>(act));

@@ -69,10 +69,8 @@ bool SheetView::control_key(QKeyEvent& event) {
         const auto refs = desk_.selected();
         const Cell by = stepped({0, 0}, *way);
         if (refs.empty()) return false;
-        const QString what =
-            refs.size() == 1 ? text_of(refs.front()) : tr("%n parts", nullptr, static_cast<int>(refs.size()));
         desk_.lay_out(
-            tr("Move %1").arg(what), [&](Design& d) { move_parts(d, refs, by.x * grid_px, by.y * grid_px); },
+            tr("Move %1").arg(named(refs)), [&](Design& d) { move_parts(d, refs, by.x * grid_px, by.y * grid_px); },
             QStringLiteral("nudge"));
         return true;
     }
@@ -191,13 +189,7 @@ void SheetView::edit_value(int part) {
     job.label = tr("Value of %1").arg(text_of(ref));
     job.text = text.value;
     job.take = [this, ref](const QString& typed, int) -> QString {
-        QString refusal;
-        desk_.edit(tr("Value of %1").arg(text_of(ref)), [&](Design& d) {
-            Design changed = d;
-            refusal = set_value(changed, ref, typed);
-            if (refusal.isEmpty()) d = changed;
-        });
-        return refusal;
+        return desk_.attempt(tr("Value of %1").arg(text_of(ref)), [&](Design& d) { return set_value(d, ref, typed); });
     };
     field_->open(to_view(at).toPoint(), std::move(job));
 }
@@ -208,9 +200,9 @@ void SheetView::rename_part_at(int part) {
     job.label = tr("Reference of %1").arg(text_of(ref));
     job.text = text_of(ref);
     job.take = [this, ref](const QString& typed, int) -> QString {
-        QString refusal;
         const std::string name = typed.trimmed().toStdString();
-        desk_.lay_out(tr("Rename %1").arg(text_of(ref)), [&](Design& d) { refusal = rename_part(d, ref, name); });
+        const QString refusal = desk_.attempt(
+            tr("Rename %1").arg(text_of(ref)), [&](Design& d) { return rename_part(d, ref, name); }, true);
         if (refusal.isEmpty()) desk_.document.select({text_of(name)});
         return refusal;
     };
@@ -223,10 +215,9 @@ void SheetView::rename_net_at(const std::string& net, QPointF at) {
     job.label = tr("Name of net %1").arg(text_of(net));
     job.text = text_of(net);
     job.take = [this, net](const QString& typed, int) -> QString {
-        QString refusal;
-        desk_.edit(tr("Name net %1").arg(typed.trimmed()),
-                   [&](Design& d) { refusal = rename_net(d, net, typed.trimmed().toStdString()); });
-        return refusal;
+        const QString name = typed.trimmed();
+        return desk_.attempt(tr("Name net %1").arg(name),
+                             [&](Design& d) { return rename_net(d, net, name.toStdString()); });
     };
     field_->open(to_view(at).toPoint() + QPoint(8, 8), std::move(job));
 }

@@ -141,23 +141,17 @@ void SheetView::offer_at_terminal(const Hit& hit) {
     };
     job.take = [this, terminal](const QString& text, int) -> QString {
         const std::string name = text.trimmed().toStdString();
-        QString refusal;
-        if (name.empty()) {
-            desk_.try_edit(tr("Ground %1").arg(text_of(terminal.part)), [&](Design& d) { return ground(d, terminal); });
-        } else {
-            const int part = drawing().part_index(terminal.part);
-            if (part < 0) return {};
-            const PartShape& shape = desk_.part(part);
-            const PlacedPort& end = *shape.port(terminal.terminal);
-            const QPointF at = sheet_point(stepped(end.at, end.out, 2));
-            desk_.edit(tr("Name the net at %1").arg(terminal_text(terminal)), [&](Design& d) {
-                Design changed = d;
-                refusal = add_stub(changed, terminal, at.x(), at.y());
-                if (refusal.isEmpty()) refusal = rename_net(changed, *net_of(changed, terminal), name);
-                if (refusal.isEmpty()) d = changed;
-            });
-        }
-        return refusal;
+        if (name.empty())
+            return desk_.attempt(tr("Ground %1").arg(text_of(terminal.part)),
+                                 [&](Design& d) { return ground(d, terminal); });
+        const int part = drawing().part_index(terminal.part);
+        if (part < 0) return {};
+        const PlacedPort& end = *desk_.part(part).port(terminal.terminal);
+        const QPointF at = sheet_point(stepped(end.at, end.out, 2));
+        return desk_.attempt(tr("Name the net at %1").arg(terminal_text(terminal)), [&](Design& d) {
+            const QString refusal = add_stub(d, terminal, at.x(), at.y());
+            return refusal.isEmpty() ? rename_net(d, *net_of(d, terminal), name) : refusal;
+        });
     };
     field_->open(to_view(sheet_point(port.at)).toPoint() + QPoint(12, 10), std::move(job));
 }

@@ -1,6 +1,5 @@
 #include "ui/sheet/typing.hpp"
 #include "core/parts/part_kind.hpp"
-#include "core/quantity/quantity.hpp"
 #include "ui/sheet/reading.hpp"
 #include "ui/sheet/symbols.hpp"
 #include <algorithm>
@@ -31,7 +30,7 @@ std::optional<Value> value_for(std::string_view kind, const std::string& text) {
     probe.kind = kind;
     const ParameterInfo* parameter = shown_parameter(probe);
     if (!parameter) return std::nullopt;
-    const auto si = parse_quantity(text, parameter->unit);
+    const auto si = read_value(text, parameter->unit);
     if (!si) return std::nullopt;
     return Value{*si, text};
 }

@@ -177,6 +177,7 @@ TEST_CASE("copies get names of their own; nets inside are new, gnd stays, ends t
 
 TEST_CASE("typed values are read as letter codes and refused with a reason", "[editing][errors]") {
     Design d = wien_loop();
+    CHECK(set_value(d, "R1", "4k7Ω").isEmpty());
     CHECK(set_value(d, "R1", "4k7").isEmpty());
     CHECK(std::get<Value>(*d.find("R1")->find("resistance")).si == 4700);
     CHECK(std::get<Value>(*d.find("R1")->find("resistance")).spelling == "4k7");
@@ -202,7 +203,7 @@ TEST_CASE("the wheel steps along the series that goes with the tolerance, with S
     CHECK(step_value(d, "R1", 1, false)); // E12: 8.2, 10
     CHECK(value_text(*d.find("R1")) == "10k");
     CHECK(step_value(d, "R1", 1, true));
-    CHECK(value_text(*d.find("R1")) == "10k1");
+    CHECK(value_text(*d.find("R1")).toStdString() == "10k1");
     CHECK_FALSE(step_value(d, "D1", 1, false));
 }
 
@@ -217,4 +218,19 @@ TEST_CASE("a stub joins by name: two stubs of one name are one net", "[editing][
     CHECK(d.labels.size() == 2);
     free_end(d, {"R1", "b"});
     CHECK(d.labels.size() == 1);
+}
+
+TEST_CASE("the first amplifier joined drives the output; an output whose last end goes is forgotten",
+          "[editing][ordinary]") {
+    Design d = three_resistors();
+    d.parts.push_back(starting_part(d, "opamp", {0, 200, 0, false}));
+    CHECK(join(d, {"R1", "b"}, {"R2", "a"}).isEmpty());
+    CHECK(d.output.empty());
+    CHECK(join(d, {"U1", "out"}, {"R3", "a"}).isEmpty());
+    CHECK(d.output == "out");
+    CHECK(d.find("R3")->net_at("a") == "out");
+    CHECK(join(d, {"U1", "minus"}, {"R3", "b"}).isEmpty());
+    CHECK(d.output == "out");
+    remove_parts(d, {"U1", "R3"});
+    CHECK(d.output.empty());
 }
