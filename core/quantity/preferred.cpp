@@ -35,6 +35,9 @@ double decimal(double mantissa, int exponent) {
     return value;
 }
 
+/// No preferred number is near zero, below it, or at the ends of what a double holds.
+bool has_neighbours(double value) { return value > 1e-290 && value < 1e290; }
+
 /// Number of the member nearest to `value`, counted through all decades.
 long nearest_index(double value, std::span<const double> decade) {
     const int exponent = static_cast<int>(std::floor(std::log10(value)));
@@ -81,11 +84,13 @@ std::span<const double> decade_of(Series series) {
 }
 
 double nearest_preferred(double value, Series series) {
+    if (!has_neighbours(value)) return value;
     const auto decade = decade_of(series);
     return member_at(nearest_index(value, decade), decade);
 }
 
 double step_preferred(double value, Series series, int steps) {
+    if (!has_neighbours(value)) return value;
     const auto decade = decade_of(series);
     long index = nearest_index(value, decade);
     const double here = member_at(index, decade);
