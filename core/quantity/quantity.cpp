@@ -1,48 +1,36 @@
 #include "core/quantity/quantity.hpp"
+#include "core/quantity/prefixes.hpp"
 #include <algorithm>
-#include <array>
+#include <cctype>
 #include <charconv>
 #include <cmath>
 #include <cstdlib>
+#include <optional>
 
 namespace sinewright {
 
 namespace {
 
-struct Prefix {
-    std::string_view text;
+bool is_digit(char c) { return c >= '0' && c <= '9'; }
+
+/// Ways to write a unit, or a factor and a unit, beside the unit itself.
+struct Spelling {
+    std::string_view unit, written;
     int exponent;
 };
-/// SI prefixes accepted in front of a unit, or alone. Both k and K are kilo; u stands for µ; two code points are µ.
-constexpr std::array<Prefix, 14> prefixes{{{"f", -15},
-                                           {"p", -12},
-                                           {"n", -9},
-                                           {"µ", -6},
-                                           {"μ", -6},
-                                           {"u", -6},
-                                           {"m", -3},
-                                           {"k", 3},
-                                           {"K", 3},
-                                           {"M", 6},
-                                           {"G", 9},
-                                           {"T", 12},
-                                           {"", 0},
-                                           {"P", 15}}};
+constexpr std::array<Spelling, 20> spellings{
+    {{"Ω", "\u2126", 0}, // the ohm sign
+     {"Ω", "R", 0},          {"Ω", "ohm", 0},    {"Ω", "ohms", 0},     {"Ω", "Ohm", 0},      {"V/√Hz", "V/rtHz", 0},
+     {"A/√Hz", "A/rtHz", 0}, {"V/s", "V/µs", 6}, {"V/s", "V/μs", 6},   {"V/s", "V/us", 6},   {"", "%", -2},
+     {"", "‰", -3},          {"", "ppm", -6},    {"1/K", "/K", 0},     {"1/K", "1/°C", 0},   {"1/K", "%", -2},
+     {"1/K", "%/K", -2},     {"1/K", "ppm", -6}, {"1/K", "ppm/K", -6}, {"1/K", "ppm/°C", -6}}};
 
-/// Letters that stand for the decimal point of a code; R, F and H stand for a factor of one.
-std::string_view unit_letter(std::string_view unit) {
-    if (unit == "Ω") return "R";
-    if (unit == "F") return "F";
-    if (unit == "H") return "H";
-    return "";
-}
-
-/// Other ways to write a unit.
-bool is_unit(std::string_view text, std::string_view unit) {
-    if (text == unit) return true;
-    if (unit == "Ω") return text == "Ω" /* U+2126 */ || text == "R" || text == "ohm" || text == "Ohm" || text == "ohms";
-    if (unit == "1/K") return text == "/K" || text == "1/°C";
-    return false;
+/// The power of ten that comes with a written unit; nothing when it is not this unit.
+std::optional<int> unit_exponent(std::string_view text, std::string_view unit) {
+    if (text == unit) return 0;
+    for (const Spelling& spelling : spellings)
+        if (spelling.unit == unit && spelling.written == text) return spelling.exponent;
+    return std::nullopt;
 }
 
 std::string_view trimmed(std::string_view text) {
@@ -57,232 +45,178 @@ std::string_view trimmed(std::string_view text) {
     return text;
 }
 
+/// Text fit for a message: short, whole characters only, control characters as "?".
+std::string shown(std::string_view text, std::size_t most) {
+    std::size_t end = std::min(text.size(), most);
+    while (end > 0 && end < text.size() && (static_cast<unsigned char>(text[end]) & 0xc0) == 0x80) --end;
+    std::string result(text.substr(0, end));
+    for (char& c : result)
+        if (static_cast<unsigned char>(c) < 0x20 || c == 0x7f) c = '?';
+    return end < text.size() ? result + "…" : result;
+}
+
 Fault bad(std::string_view text, std::string_view unit, std::string_view why) {
-    const std::string example = unit == "Ω"    ? "4k7, 470R or 4.7 kΩ"
-                                : unit == "F"  ? "10n, 4p7 or 10 nF"
-                                : unit == "H"  ? "1m5 or 1.5 mH"
-                                : unit.empty() ? "0.5 or 1%"
-                                               : "3M or 3 M" + std::string(unit);
-    std::string shown(text.substr(0, 40));
-    if (text.size() > 40) shown += "…";
-    return {FaultKind::bad_quantity, "", "`" + shown + "`: " + std::string(why) + ".",
+    const std::string example = unit == "Ω"     ? "4k7, 470R or 4.7 kΩ"
+                                : unit == "F"   ? "10n, 4p7 or 10 nF"
+                                : unit == "H"   ? "1m5 or 1.5 mH"
+                                : unit == "1/K" ? "50ppm or 5e-5"
+                                : unit.empty()  ? "0.5 or 1%"
+                                                : "1.5 or 1.5 " + std::string(unit);
+    return {FaultKind::bad_quantity, "", "`" + shown(text, 40) + "`: " + std::string(why) + ".",
             "Write it like " + example + "."};
 }
 
 /// Digits with at most one decimal point and an optional exponent, as far as they reach.
 struct Number {
-    std::string digits; ///< without the point
-    int decimals = 0;   ///< how many of the digits stand behind the point
-    int exponent = 0;   ///< written with e
+    std::string digits;     ///< without the point
+    long long decimals = 0; ///< how many of the digits stand behind the point
+    long long exponent = 0; ///< written with e
     bool negative = false, point = false, has_exponent = false;
 };
 
-/// Takes a number off the front of `text`. False when there is none.
-bool take_number(std::string_view& text, Number& number) {
-    if (text.starts_with("−"))
-        number.negative = true, text.remove_prefix(std::string_view("−").size());
+void take_exponent(std::string_view& text, Number& number) {
+    constexpr long long beyond_any_double = 1'000'000'000; // more than digits could make up for
+    const bool has_sign = text.size() > 1 && (text[1] == '+' || text[1] == '-');
+    std::size_t end = has_sign ? 2 : 1;
+    const std::size_t from = end;
+    for (; end < text.size() && is_digit(text[end]); ++end)
+        number.exponent = std::min(number.exponent * 10 + (text[end] - '0'), beyond_any_double);
+    if (end == from) return; // a letter e, no exponent
+    if (text[1] == '-') number.exponent = -number.exponent;
+    number.has_exponent = true;
+    text.remove_prefix(end);
+}
+
+/// Takes sign, digits, point and exponent off the front of `text`; there may be none.
+Number take_number(std::string_view& text) {
+    constexpr std::string_view true_minus = "−";
+    Number number;
+    if (text.starts_with(true_minus))
+        number.negative = true, text.remove_prefix(true_minus.size());
     else if (text.starts_with("-") || text.starts_with("+"))
         number.negative = text[0] == '-', text.remove_prefix(1);
-    const auto is_digit = [](char c) { return c >= '0' && c <= '9'; };
-    while (!text.empty() && (is_digit(text[0]) || (text[0] == '.' && !number.point))) {
+    for (; !text.empty() && (is_digit(text[0]) || (text[0] == '.' && !number.point)); text.remove_prefix(1)) {
         if (text[0] == '.')
             number.point = true;
         else
             number.digits += text[0], number.decimals += number.point;
-        text.remove_prefix(1);
     }
-    if (!number.digits.empty() && text.size() > 1 && (text[0] == 'e' || text[0] == 'E')) {
-        const std::size_t from = text[1] == '+' ? 2 : 1; // from_chars takes no plus sign
-        int exponent = 0;
-        const auto end = std::from_chars(text.data() + from, text.data() + text.size(), exponent);
-        if (end.ec == std::errc{}) {
-            number.exponent = exponent, number.has_exponent = true;
-            text.remove_prefix(static_cast<std::size_t>(end.ptr - text.data()));
-        }
-    }
-    return !number.digits.empty();
+    if (!number.digits.empty() && (text.starts_with('e') || text.starts_with('E'))) take_exponent(text, number);
+    return number;
 }
 
-/// The double nearest to the decimal number digits·10^(exponent − decimals): the point is moved in the text, not by
-/// multiplying, so nothing is rounded twice.
-bool to_double(const Number& number, int power, double& value) {
+/// The double nearest to the decimal number digits·10^(exponent − decimals + power); nothing when it is too large.
+/// The point is moved in the text, not by multiplying, so nothing is rounded twice.
+std::optional<double> nearest_double(const Number& number, int power) {
     const std::string text = number.digits + "e" + std::to_string(number.exponent - number.decimals + power);
-    const auto end = std::from_chars(text.data(), text.data() + text.size(), value);
-    if (end.ec == std::errc::result_out_of_range) {
-        value = std::strtod(text.c_str(), nullptr); // too small is zero or subnormal, too large is infinite
-        if (!std::isfinite(value)) return false;
-    }
-    if (number.negative) value = -value;
-    return true;
+    double value = 0;
+    if (std::from_chars(text.data(), text.data() + text.size(), value).ec == std::errc::result_out_of_range)
+        value = std::strtod(text.c_str(), nullptr); // tells too small, which is zero, from too large
+    if (!std::isfinite(value)) return std::nullopt;
+    return number.negative ? -value : value;
 }
 
-const Prefix* prefix_of(std::string_view text) {
-    const auto found = std::find_if(prefixes.begin(), prefixes.end(), [&](const Prefix& p) { return p.text == text; });
-    return found == prefixes.end() ? nullptr : &*found;
+/// The power of ten a code letter stands for: a prefix, the unit's letter, or L for milliohms.
+std::optional<int> letter_exponent(std::string_view letter, std::string_view unit) {
+    if (unit == "Ω" && letter == "L") return -3;
+    if (!letter.empty() && (letter == unit_letter(unit) || (unit == "Ω" && letter == "r"))) return 0;
+    for (const Prefix& prefix : prefixes)
+        if (prefix.text == letter) return prefix.exponent;
+    return std::nullopt;
 }
 
-/// Percent and ppm, for pure numbers and temperature coefficients.
-bool is_ratio(std::string_view text, int& power) {
-    if (text == "%") return power = -2, true;
-    if (text == "‰") return power = -3, true;
-    if (text == "ppm" || text == "ppm/K") return power = -6, true;
-    return false;
+/// "k7", "R", "n15" behind the leading digits: the letter stands for the decimal point. A unit may follow.
+std::optional<int> take_letter_code(std::string_view text, std::string_view unit, Number& number) {
+    if (number.point || number.has_exponent) return std::nullopt;
+    const auto first = std::find_if(text.begin(), text.end(), is_digit);
+    const auto last = std::find_if_not(first, text.end(), is_digit);
+    const std::string_view letter(text.begin(), first), fraction(first, last);
+    const std::string_view behind = trimmed(std::string_view(last, text.end()));
+    const auto power = letter_exponent(letter, unit);
+    if (!power || !(behind.empty() || (!unit.empty() && unit_exponent(behind, unit) == 0))) return std::nullopt;
+    if (number.digits.empty() && fraction.empty()) return std::nullopt;
+    number.digits += fraction;
+    number.decimals += static_cast<long long>(fraction.size());
+    return power;
 }
 
-/// What follows the number: a letter that is the decimal point with digits behind it, or a prefix and a unit.
-bool take_scale(std::string_view text, std::string_view unit, Number& number, int& power) {
-    power = 0;
-    if (text.empty()) return true;
-    if ((unit.empty() || unit == "1/K") && is_ratio(text, power)) return true;
-    // Letter code: the letter, then only digits, and no point before.
-    const std::string_view written = text;
-    // A unit may stand behind a code too: 1m5H, 4k7Ω.
-    if (!unit.empty() && text.size() > unit.size() && text.ends_with(unit)) {
-        const char before = text[text.size() - unit.size() - 1];
-        if (before >= '0' && before <= '9') text.remove_suffix(unit.size());
-    }
-    if (!number.point && !number.has_exponent) {
-        const std::size_t tail =
-            std::find_if(text.begin(), text.end(), [](char c) { return c >= '0' && c <= '9'; }) - text.begin();
-        const std::string_view letter = text.substr(0, tail), fraction = text.substr(tail);
-        const bool digits_only =
-            std::all_of(fraction.begin(), fraction.end(), [](char c) { return c >= '0' && c <= '9'; });
-        const Prefix* prefix = prefix_of(letter);
-        const bool one = !unit.empty() && (letter == unit_letter(unit) || (unit == "Ω" && letter == "r"));
-        const bool milliohm = unit == "Ω" && letter == "L";
-        if (!fraction.empty() && digits_only && !letter.empty() && (prefix || one || milliohm)) {
-            number.digits += fraction;
-            number.decimals += static_cast<int>(fraction.size());
-            power = prefix ? prefix->exponent : milliohm ? -3 : 0;
-            return true;
-        }
-        if (fraction.empty() && (one || milliohm)) {
-            power = milliohm ? -3 : 0;
-            return !number.digits.empty();
-        }
-    }
-    text = trimmed(written);
-    if (!unit.empty() && is_unit(text, unit)) return true;
+/// The power of ten of what stands behind the number; nothing when it is neither code, prefix nor unit.
+std::optional<int> take_scale(std::string_view text, std::string_view unit, Number& number) {
+    if (text.empty()) return 0;
+    if (const auto power = take_letter_code(text, unit, number)) return power;
+    text = trimmed(text);
+    if (const auto power = unit_exponent(text, unit)) return power;
     for (const Prefix& prefix : prefixes) {
-        if (prefix.text.empty() || !text.starts_with(prefix.text)) continue;
+        if (!text.starts_with(prefix.text)) continue;
         const std::string_view rest = trimmed(text.substr(prefix.text.size()));
-        if (rest.empty() || (!unit.empty() && is_unit(rest, unit))) return power = prefix.exponent, true;
+        if (rest.empty() || unit_exponent(rest, unit) == 0) return prefix.exponent;
     }
-    return false;
+    return std::nullopt;
 }
 
-/// Shortest digits that read back as the same double, as digits and the power of ten of the first.
-void shortest(double value, std::string& digits, int& exponent) {
-    std::array<char, 40> text{}; // atoi below needs the zero behind the number
-    const auto end = std::to_chars(text.data(), text.data() + text.size(), value, std::chars_format::scientific);
-    const std::string_view written(text.data(), static_cast<std::size_t>(end.ptr - text.data()));
-    const std::size_t e = written.find('e');
-    digits.clear();
-    for (const char c : written.substr(0, e))
-        if (c >= '0' && c <= '9') digits += c;
-    const char* from = text.data() + e + 1 + (text[e + 1] == '+');
-    std::from_chars(from, end.ptr, exponent);
-    while (digits.size() > 1 && digits.back() == '0') digits.pop_back();
+bool is_infinite_or_nan(std::string_view text) {
+    std::string lower(text.substr(0, 10));
+    for (char& c : lower) c = static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
+    return lower == "inf" || lower == "infinity" || lower == "nan" || text == "∞";
 }
 
-std::string with_thin_spaces(std::string digits) {
-    for (int at = static_cast<int>(digits.size()) - 3; at > 0; at -= 3)
-        digits.insert(static_cast<std::size_t>(at), "\u2009");
-    return digits;
-}
+struct ToleranceLetter {
+    char letter;
+    double ratio, below_10_pf; ///< ±; the second in pF, 0 where the letter has no such meaning
+};
+/// Source: IEC 60062:2016, symmetric tolerances.
+constexpr std::array<ToleranceLetter, 14> tolerance_letters{{{'E', 0.005e-2, 0},
+                                                             {'L', 0.01e-2, 0},
+                                                             {'P', 0.02e-2, 0},
+                                                             {'W', 0.05e-2, 0},
+                                                             {'B', 0.1e-2, 0.1},
+                                                             {'C', 0.25e-2, 0.25},
+                                                             {'D', 0.5e-2, 0.5},
+                                                             {'F', 1e-2, 1},
+                                                             {'G', 2e-2, 2},
+                                                             {'H', 3e-2, 0},
+                                                             {'J', 5e-2, 0},
+                                                             {'K', 10e-2, 0},
+                                                             {'M', 20e-2, 0},
+                                                             {'N', 30e-2, 0}}};
 
 } // namespace
 
 Result<double> parse_quantity(std::string_view text, std::string_view unit) {
-    const std::string_view whole = trimmed(text);
-    std::string_view rest = whole;
+    std::string_view rest = trimmed(text);
     if (rest.empty()) return bad(text, unit, "nothing is written here");
-    Number number;
-    take_number(rest, number);
-    int power = 0;
-    if (rest == "inf" || rest == "nan" || rest == "Infinity" || rest == "NaN")
-        return bad(text, unit, "only finite numbers are allowed");
-    if (number.digits.empty() && rest.empty()) return bad(text, unit, "this is no number");
-    if (!take_scale(rest, unit, number, power) || number.digits.empty())
+    Number number = take_number(rest);
+    if (is_infinite_or_nan(rest)) return bad(text, unit, "only finite numbers are allowed");
+    const auto power = take_scale(rest, unit, number);
+    if (number.digits.empty()) return bad(text, unit, "this is no number");
+    if (!power && rest.starts_with(',')) return bad(text, unit, "the decimal mark is a point, not a comma");
+    if (!power)
         return bad(text, unit,
-                   number.digits.empty()
-                       ? "this is no number"
-                       : "`" + std::string(rest.substr(0, 12)) + "` behind the number is neither a prefix nor " +
-                             (unit.empty() ? "%" : "the unit " + std::string(unit)));
-    double value = 0;
-    if (!to_double(number, power, value)) return bad(text, unit, "this number is too large");
-    return value;
+                   "`" + shown(trimmed(rest), 12) + "` behind the number is neither a prefix nor " +
+                       (unit.empty() ? "%" : "the unit " + std::string(unit)));
+    const auto value = nearest_double(number, *power);
+    if (!value) return bad(text, unit, "this number is too large");
+    return *value;
 }
 
-std::string letter_code(double value, std::string_view unit) {
-    if (value == 0) return std::signbit(value) ? "-0" : "0";
-    std::string digits;
-    int exponent = 0;
-    shortest(std::abs(value), digits, exponent);
-    const std::string sign = value < 0 ? "-" : "";
-    const std::string_view one = unit_letter(unit);
-    // Values that no letter reaches in a readable way are written with a power of ten.
-    const int lowest = one.empty() || unit == "F" || unit == "H" ? -12 : -1, highest = 14;
-    if (exponent < lowest || exponent > highest) {
-        std::array<char, 40> text;
-        const auto end = std::to_chars(text.data(), text.data() + text.size(), value);
-        return {text.data(), end.ptr};
+Result<ComponentCode> parse_component_code(std::string_view text, std::string_view unit) {
+    const auto plain = parse_quantity(text, unit);
+    if (plain) return ComponentCode{*plain, std::nullopt};
+    const std::string_view code = trimmed(text);
+    if (code.size() < 3 || unit_letter(unit).empty()) return plain.faults();
+    const std::string_view value_code = code.substr(0, code.size() - 1);
+    const bool has_letter = std::any_of(value_code.begin(), value_code.end(),
+                                        [](char c) { return !is_digit(c) && c != '.' && c != '-' && c != '+'; });
+    const auto value = parse_quantity(value_code, unit);
+    if (!has_letter || !value) return plain.faults();
+    if (std::string_view("QTSZ").find(code.back()) != std::string_view::npos)
+        return bad(text, unit, "an unsymmetric tolerance can't be kept");
+    for (const ToleranceLetter& known : tolerance_letters) {
+        if (known.letter != code.back()) continue;
+        const bool in_picofarads = unit == "F" && *value > 0 && *value < 10e-12 && known.below_10_pf > 0;
+        return ComponentCode{*value, in_picofarads ? known.below_10_pf * 1e-12 / *value : known.ratio};
     }
-    int power = static_cast<int>(std::floor(exponent / 3.0)) * 3;
-    if (unit == "Ω" && power < 0) power = 0;
-    const Prefix* prefix = nullptr;
-    for (const Prefix& candidate : prefixes)
-        if (candidate.exponent == power && (!prefix || candidate.text == "µ")) prefix = prefix ? prefix : &candidate;
-    const std::string letter(power == 0 ? one : prefix->text);
-    const int whole = exponent - power + 1; // digits before the point
-    if (whole <= 0)
-        return sign + (letter.empty() ? "0." : letter) + std::string(static_cast<std::size_t>(-whole), '0') + digits;
-    if (static_cast<int>(digits.size()) <= whole)
-        return sign + digits + std::string(static_cast<std::size_t>(whole) - digits.size(), '0') + letter;
-    const std::string point = letter.empty() ? "." : letter;
-    return sign + digits.substr(0, static_cast<std::size_t>(whole)) + point +
-           digits.substr(static_cast<std::size_t>(whole));
-}
-
-std::string plain_text(double value, int decimals) {
-    if (std::isnan(value)) return "–";
-    if (std::isinf(value)) return value > 0 ? "∞" : "−∞";
-    std::array<char, 400> text;
-    const auto end =
-        std::to_chars(text.data(), text.data() + text.size(), std::abs(value), std::chars_format::fixed, decimals);
-    const std::string_view written(text.data(), static_cast<std::size_t>(end.ptr - text.data()));
-    const std::size_t point = std::min(written.find('.'), written.size());
-    const bool zero = written.find_first_not_of("0.") == std::string_view::npos;
-    return (value < 0 && !zero ? "−" : "") + with_thin_spaces(std::string(written.substr(0, point))) +
-           std::string(written.substr(point));
-}
-
-std::string si_text(double value, std::string_view unit, int digits) {
-    const std::string tail = unit.empty() ? "" : " " + std::string(unit);
-    if (!std::isfinite(value)) return plain_text(value, 0) + tail;
-    if (value == 0) return "0" + tail;
-    std::array<char, 40> rounded_text;
-    const auto end = std::to_chars(rounded_text.data(), rounded_text.data() + rounded_text.size(), value,
-                                   std::chars_format::scientific, std::max(digits - 1, 0));
-    double rounded = value;
-    std::from_chars(rounded_text.data(), end.ptr, rounded);
-    const int exponent = static_cast<int>(std::floor(std::log10(std::abs(rounded)) + 1e-12));
-    const bool scales = !unit.empty() && unit != "dB" && unit != "%" && unit != "°" &&
-                        unit.find('/') == std::string_view::npos && unit.find('\xc2') == std::string_view::npos;
-    int power = static_cast<int>(std::floor(exponent / 3.0)) * 3;
-    if (!scales || power < -15 || power > 12) power = 0;
-    if (power == 3 && exponent == 3 && (unit == "Hz" || unit == "V"))
-        power = 0; // 1 001.3 Hz reads better than 1.0013 kHz
-    std::string prefix;
-    for (const Prefix& candidate : prefixes)
-        if (candidate.exponent == power && prefix.empty()) prefix = candidate.text;
-    int decimals = std::clamp(digits - 1 - (exponent - power), 0, 17);
-    std::string number = plain_text(rounded * std::pow(10.0, -power), decimals);
-    if (number.find('.') != std::string::npos) {
-        while (number.back() == '0') number.pop_back();
-        if (number.back() == '.') number.pop_back();
-    }
-    return number + (unit.empty() ? "" : " " + prefix + std::string(unit));
+    return plain.faults();
 }
 
 } // namespace sinewright
