@@ -97,7 +97,7 @@ template <class T> T limited_exp(const T& x) {
     using std::exp;
     if (value_of(x) <= 80) return exp(x);
     static const double at_knee = std::exp(80.0);
-    return at_knee * (x - 80.0);
+    return at_knee * (x - 79.0);
 }
 
 } // namespace sinewright
