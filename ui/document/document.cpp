@@ -72,6 +72,8 @@ Document::Document(QObject* parent) : QObject(parent), design_(std::make_shared<
     connect(&history_, &QUndoStack::cleanChanged, this, &Document::file_changed);
 }
 
+Document::~Document() { history_.disconnect(this); } // it reports its end, when half of this is gone
+
 void Document::edit(const QString& name, const std::function<void(Design&)>& change, const QString& merge_key) {
     Design after = *design_;
     change(after);

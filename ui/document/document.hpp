@@ -16,6 +16,7 @@ class Document : public QObject {
     Q_OBJECT
   public:
     explicit Document(QObject* parent = nullptr);
+    ~Document() override; ///< without a last signal
 
     const Design& design() const { return *design_; }
     /// The same as an immutable snapshot that another thread may keep.

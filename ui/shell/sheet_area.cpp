@@ -33,6 +33,7 @@ SheetArea::SheetArea(Document& document, Analyst& analyst, QWidget* parent)
     connect(&note_time_, &QTimer::timeout, note_, &QWidget::hide);
     connect(sheet_, &SheetView::message, this, &SheetArea::say);
     connect(&document_, &Document::changed, this, &SheetArea::take_over);
+    connect(properties_, &Properties::built, this, &SheetArea::keep_clear_of_selection);
     take_over();
 }
 
@@ -40,6 +41,18 @@ void SheetArea::take_over() {
     const bool empty = document_.design().parts.empty();
     empty_->setVisible(empty);
     properties_->setVisible(!empty);
+}
+
+void SheetArea::keep_clear_of_selection() {
+    QRectF selected;
+    for (const QString& ref : document_.selection())
+        if (const int part = sheet_->drawing().part_index(ref.toStdString()); part >= 0) {
+            const QRectF reach = sheet_->drawing().parts()[static_cast<std::size_t>(part)].reach();
+            selected |= QRectF(sheet_->to_view(reach.topLeft()), sheet_->to_view(reach.bottomRight()));
+        }
+    properties_->move_to(Qt::TopRightCorner);
+    if (selected.intersects(properties_->geometry())) properties_->move_to(Qt::TopLeftCorner);
+    if (selected.intersects(properties_->geometry())) properties_->move_to(Qt::TopRightCorner);
 }
 
 void SheetArea::say(const QString& note) {

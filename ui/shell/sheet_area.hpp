@@ -30,6 +30,7 @@ class SheetArea : public QWidget {
   private:
     void take_over();
     void place_note();
+    void keep_clear_of_selection();
     Document& document_;
     SheetView* sheet_;
     Dials* dials_;

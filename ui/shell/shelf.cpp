@@ -15,7 +15,7 @@ namespace sinewright::ui {
 namespace {
 
 constexpr double word_px = 11;
-constexpr double smallest_word_px = 9.5;
+constexpr double smallest_word_px = 9;
 constexpr int symbol_height = 24;
 constexpr int narrow_shelf = 880; // below it, tiles need the room more than the field's hint
 
@@ -51,10 +51,10 @@ void ShelfTile::paintEvent(QPaintEvent*) {
     paint_symbol(painter, kind_.toStdString(), QRectF((width() - side) / 2, 7, side, symbol_height), t);
 
     double px = word_px;
-    while (px > smallest_word_px && QFontMetricsF(t.font(px)).horizontalAdvance(word_) > width() - 4) px -= 0.25;
+    while (px > smallest_word_px && QFontMetricsF(t.font(px)).horizontalAdvance(word_) > width() - 3) px -= 0.25;
     painter.setFont(t.font(px));
     painter.setPen(lit ? t.ink : t.soft);
-    painter.drawText(QRectF(1, height() - 20, width() - 2, 15), Qt::AlignCenter,
+    painter.drawText(QRectF(0, height() - 20, width(), 15), Qt::AlignCenter,
                      painter.fontMetrics().elidedText(word_, Qt::ElideRight, width() - 2));
 }
 
@@ -115,7 +115,7 @@ void Shelf::show_armed(const QString& kind) {
 
 void Shelf::resizeEvent(QResizeEvent*) {
     const bool narrow = width() < narrow_shelf;
-    field_->setFixedWidth(narrow ? 108 : 184);
+    field_->setFixedWidth(narrow ? 100 : 184);
     field_->setPlaceholderText(narrow ? tr("4k7, 10n") : tr("type a value: 4k7, 10n"));
 }
 

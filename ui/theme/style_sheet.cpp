@@ -21,6 +21,10 @@ QPushButton[role="primary"]:focus { border: 2px solid {ink}; padding: 4px 10px; 
 QPushButton[role="quiet"], QToolButton[role="quiet"] { background: transparent; border: 1px solid transparent; }
 QPushButton[role="quiet"]:hover, QToolButton[role="quiet"]:hover { background: {grid}; }
 QPushButton[role="quiet"]:focus, QToolButton[role="quiet"]:focus { border: 1px solid {accent}; }
+QPushButton[role="link"], QToolButton[role="link"] { background: transparent; border: 1px solid transparent;
+    border-radius: 4px; padding: 2px 0; color: {accent}; }
+QPushButton[role="link"]:hover, QToolButton[role="link"]:hover { text-decoration: underline; }
+QPushButton[role="link"]:focus, QToolButton[role="link"]:focus { border-color: {accent}; }
 QToolButton::menu-indicator, QPushButton::menu-indicator { image: none; width: 0; }
 
 QLineEdit, QPlainTextEdit, QComboBox { background: {raised}; color: {ink}; border: 1px solid {line};

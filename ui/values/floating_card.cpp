@@ -52,8 +52,22 @@ QString FloatingCard::title() const { return title_->text(); }
 void FloatingCard::set_content(QWidget* content) {
     delete content_;
     content_ = content;
+    QList<QWidget*> walk; // Tab goes from the head through the content in its own order
+    for (QWidget* next = content->nextInFocusChain(); next != content; next = next->nextInFocusChain()) walk << next;
     column_->addWidget(content_);
+    QWidget* last = fold_;
+    for (QWidget* next : walk) {
+        if (!(next->focusPolicy() & Qt::TabFocus)) continue;
+        setTabOrder(last, next);
+        last = next;
+    }
     content_->setVisible(!folded_);
+    settle();
+}
+
+void FloatingCard::move_to(Qt::Corner corner) {
+    if (!offset_.isNull() || corner == corner_) return;
+    corner_ = corner;
     settle();
 }
 

@@ -19,6 +19,8 @@ class FloatingCard : public QFrame {
     void set_content(QWidget* content);
     bool folded() const { return folded_; }
     void set_folded(bool folded);
+    /// Goes to another corner, unless it was put somewhere by hand.
+    void move_to(Qt::Corner corner);
     void settle(); ///< takes the size its content wants and its place in the corner
 
   signals:

@@ -17,7 +17,7 @@
 namespace sinewright::ui {
 namespace {
 
-constexpr int label_width = 112, unit_width = 34, dial_width = 42;
+constexpr int label_width = 108, unit_width = 28, dial_width = 40;
 
 QString text(std::string_view view) { return QString::fromUtf8(view.data(), qsizetype(view.size())); }
 
@@ -75,7 +75,7 @@ PartForm::PartForm(Document& document, const QString& ref, QWidget* parent)
     }
     more_ = new QToolButton(this);
     more_->setObjectName("more_parameters");
-    more_->setProperty("role", "quiet");
+    more_->setProperty("role", "link");
     more_->setCheckable(true);
     connect(more_, &QToolButton::toggled, this, &PartForm::show_rare);
     column_->addWidget(more_, 0, Qt::AlignLeft);
@@ -95,7 +95,7 @@ void PartForm::add_head() {
     name_->setMaximumWidth(90);
     auto* remove = new QPushButton(tr("Delete"), this);
     remove->setObjectName("delete_part");
-    remove->setProperty("role", "quiet");
+    remove->setProperty("role", "link");
     remove->setAccessibleName(tr("Delete %1").arg(ref_));
     row->addWidget(name_);
     row->addStretch(1);
@@ -239,7 +239,8 @@ void PartForm::show_rare(bool all) {
         row.whole->setVisible(visible);
         hidden += visible ? 0 : 1;
     }
-    more_->setText(all ? tr("Fewer") : tr("%n more", nullptr, hidden));
+    more_->setText(all ? tr("Fewer") : tr("%1 more").arg(hidden));
+    more_->setAccessibleName(all ? tr("Show fewer values") : tr("Show %1 more values").arg(hidden));
     more_->setVisible(all || hidden > 0);
 }
 

@@ -14,7 +14,7 @@
 namespace sinewright::ui {
 namespace {
 
-constexpr int card_width = 316;
+constexpr int card_width = 296;
 
 /// A scroll area as tall as its content, as long as the card finds room for it.
 class FormArea : public QScrollArea {
@@ -75,6 +75,7 @@ void Properties::put(QWidget* form, const QString& title) {
     set_title(title);
     set_folded(built_for_.isEmpty() ? design_folded_ : part_folded_);
     set_content(new FormArea(form));
+    emit built();
 }
 
 void Properties::build() {
@@ -108,7 +109,7 @@ void Properties::show_several() {
     names->setProperty("role", "soft");
     auto* remove = new QPushButton(tr("Delete"), form);
     remove->setObjectName("delete_parts");
-    remove->setAccessibleName(tr("Delete %n parts", nullptr, int(selected.size())));
+    remove->setAccessibleName(tr("Delete %1 parts").arg(selected.size()));
     column->addWidget(names);
     column->addWidget(remove, 0, Qt::AlignLeft);
     connect(remove, &QPushButton::clicked, this, [this, selected] {

@@ -15,6 +15,9 @@ class Properties : public FloatingCard {
     PartForm* part_form() const { return part_form_; }
     DesignForm* design_form() const { return design_form_; }
 
+  signals:
+    void built(); ///< shows another subject now
+
   private:
     void take_over();
     void build();

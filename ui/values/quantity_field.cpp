@@ -61,7 +61,6 @@ void QuantityField::read_text() {
         return;
     }
     setModified(false);
-    shown_text_ = typed; // pressing Enter and leaving the field is one change
     emit accepted({*read, typed.toStdString()});
 }
 

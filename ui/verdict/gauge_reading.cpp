@@ -41,6 +41,8 @@ const Quantity* find_quantity(const std::string& key) {
     return found == std::end(quantities) ? nullptr : found;
 }
 
+constexpr std::size_t fewest_gauges = 3; // fewer targets leave room for what is useful anyway
+
 constexpr Quantity plain_quantity{"", "", ""};
 
 QString number(const Quantity& quantity, double si) {
@@ -137,7 +139,7 @@ QString fact_for(const std::string& key, const Findings& findings) {
     if (key == "growth_per_cycle" && findings.small_signal && findings.small_signal->growth_per_s)
         return tr("growth rate %1 1/s")
             .arg(number(*find_quantity("growth_per_s"), *findings.small_signal->growth_per_s));
-    if (key == "growth_per_s") return growth_fact(findings);
+    if (key == "growth_per_s" || key == "frequency_hz") return growth_fact(findings);
     return {};
 }
 
@@ -160,7 +162,7 @@ GaugeReading reading_of(const TargetFinding& finding, const Findings* findings, 
     return reading;
 }
 
-/// The three results every loop has, for designs that set no targets.
+/// The three results every loop has, for designs that set no targets or few.
 std::vector<TargetFinding> usual_results(const Findings* findings) {
     TargetFinding margin, frequency, growth;
     margin.name = "startup_margin_db", frequency.name = "frequency_hz", growth.name = "growth_per_cycle";
@@ -205,7 +207,12 @@ QString result_title(const std::string& key) {
 
 std::vector<GaugeReading> gauge_readings(const Findings* findings, const Design& design) {
     std::vector<TargetFinding> shown = findings ? findings->targets : std::vector<TargetFinding>{};
-    if (shown.empty()) shown = design.targets.empty() ? usual_results(findings) : targets_without_values(design);
+    if (shown.empty()) shown = targets_without_values(design);
+    for (const TargetFinding& usual : usual_results(findings)) {
+        const bool there = std::any_of(shown.begin(), shown.end(),
+                                       [&](const TargetFinding& finding) { return finding.name == usual.name; });
+        if (shown.size() < fewest_gauges && !there) shown.push_back(usual);
+    }
     std::vector<GaugeReading> readings;
     for (const TargetFinding& finding : shown) {
         const auto target = std::find_if(design.targets.begin(), design.targets.end(),

@@ -26,7 +26,7 @@ struct GaugeReading {
 /// What a result is called on screen: "Start-up margin" for "startup_margin_db"; its name in words when unknown.
 QString result_title(const std::string& key);
 
-/// One gauge per target; without targets start-up margin, frequency and growth per cycle.
+/// One gauge per target; where there are fewer than three, start-up margin, frequency and growth per cycle fill up.
 /// Values not known yet (no findings, a failed stage) read "–" with the reason as fact.
 std::vector<GaugeReading> gauge_readings(const Findings* findings, const Design& design);
 
