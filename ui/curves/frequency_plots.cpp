@@ -166,6 +166,7 @@ void FrequencyPlots::build_lens() {
     for (QCPItemPosition* corner : {lens_card_->topLeft, lens_card_->bottomRight})
         corner->setType(QCPItemPosition::ptAbsolute);
     lens_card_->setClipToAxisRect(false);
+    lens_card_->setLayer("lens"); // first in its layer: the texts and curves lie on it
     lens_rect_ = new QCPAxisRect(this, false);
     lens_rect_->addAxis(QCPAxis::atBottom)->setScaleType(QCPAxis::stLogarithmic);
     lens_rect_->addAxis(QCPAxis::atLeft);
@@ -185,7 +186,6 @@ void FrequencyPlots::build_lens() {
         text->setClipToAxisRect(false);
         text->setLayer("lens");
     }
-    lens_card_->setLayer("lens");
     for (QCPLayerable* item : {static_cast<QCPLayerable*>(lens_zero_), static_cast<QCPLayerable*>(lens_curve_),
                                static_cast<QCPLayerable*>(lens_ring_)})
         item->setLayer("lens");

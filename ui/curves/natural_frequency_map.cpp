@@ -41,9 +41,11 @@ NaturalFrequencyMap::NaturalFrequencyMap(QWidget* parent) : QCustomPlot(parent) 
     right_half_->setLayer("background");
     axis_ = new QCPItemLine(this);
     for (QCPItemPosition* end : {axis_->start, axis_->end}) end->setTypeY(QCPItemPosition::ptAxisRectRatio);
+    axis_->start->setCoords(0, 0);
     axis_->end->setCoords(0, 1);
     real_ = new QCPItemLine(this);
     for (QCPItemPosition* end : {real_->start, real_->end}) end->setTypeX(QCPItemPosition::ptAxisRectRatio);
+    real_->start->setCoords(0, 0);
     real_->end->setCoords(1, 0);
     trail_ = new QCPCurve(xAxis, yAxis);
     distance_ = new QCPItemLine(this);

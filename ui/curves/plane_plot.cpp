@@ -51,6 +51,7 @@ PlanePlot::PlanePlot(QWidget* parent) : QCustomPlot(parent) {
             end->setTypeX(horizontal ? QCPItemPosition::ptAxisRectRatio : QCPItemPosition::ptPlotCoords);
             end->setTypeY(horizontal ? QCPItemPosition::ptPlotCoords : QCPItemPosition::ptAxisRectRatio);
         }
+        line->start->setCoords(0, 0);
         line->end->setCoords(horizontal ? 1 : 0, horizontal ? 0 : 1);
         return line;
     };
