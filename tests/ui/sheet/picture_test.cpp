@@ -1,7 +1,9 @@
-/// Pictures to look at, and times to read: run by hand with "[.picture]" or "[.bench]"; files go to the working folder.
+/// Pictures to look at, and times to read: run by hand with "[.picture]" or "[.bench]"; files go to "sheet-pictures" in
+/// the temporary folder.
 #include "sheet_designs.hpp"
 #include "ui/sheet/sheet.hpp"
 #include <QApplication>
+#include <QDir>
 #include <QElapsedTimer>
 #include <QImage>
 #include <QKeyEvent>
@@ -14,6 +16,12 @@ using namespace sinewright;
 using namespace sinewright::ui;
 
 namespace {
+
+QString file(const QString& name) {
+    const QDir folder(QDir::tempPath() + "/sheet-pictures");
+    folder.mkpath(".");
+    return folder.filePath(name);
+}
 
 void paint_all_symbols(QPainter& painter, const Theme& look) {
     int row = 0;
@@ -54,7 +62,7 @@ TEST_CASE("all symbols in every turn", "[.picture]") {
         painter.setRenderHint(QPainter::Antialiasing);
         paint_all_symbols(painter, *look);
         painter.end();
-        image.save(look->dark ? "symbols-dark.png" : "symbols-light.png");
+        image.save(file(look->dark ? "symbols-dark.png" : "symbols-light.png"));
     }
 }
 
@@ -68,7 +76,23 @@ TEST_CASE("the Wien loop placed by hand", "[.picture]") {
         document.set_new(test::wien_loop());
         analyst.wait_until_current(5000);
         sheet.zoom_to_fit();
-        sheet.grab().save(choice == ThemeChoice::dark ? "wien-dark.png" : "wien-light.png");
+        sheet.grab().save(file(choice == ThemeChoice::dark ? "wien-dark.png" : "wien-light.png"));
+    }
+}
+
+TEST_CASE("every sample as opened", "[.picture]") {
+    ThemeKeeper::instance().choose(ThemeChoice::light);
+    const QDir samples(QString(SINEWRIGHT_SOURCE_DIR) + "/samples");
+    for (const QString& name : samples.entryList({"*.sinewright"})) {
+        Document document;
+        Analyst analyst(document);
+        SheetView sheet(document, analyst);
+        sheet.resize(920, 736);
+        QString message;
+        REQUIRE(document.open(samples.filePath(name), &message));
+        analyst.wait_until_current(20000);
+        sheet.zoom_to_fit();
+        sheet.grab().save(file(name.section('.', 0, 0) + ".png"));
     }
 }
 
@@ -92,22 +116,22 @@ TEST_CASE("the sheet in the middle of things", "[.picture]") {
         QApplication::sendEvent(&sheet, &event);
     };
     document.select({"R1", "C1"});
-    sheet.grab().save("chosen.png");
+    sheet.grab().save(file("chosen.png"));
     send(QEvent::MouseButtonPress, end("J1", "g"), Qt::LeftButton, Qt::LeftButton);
     send(QEvent::MouseMove, end("J1", "g") - QPointF(60, -40), Qt::NoButton, Qt::LeftButton);
-    sheet.grab().save("joining-free.png");
+    sheet.grab().save(file("joining-free.png"));
     send(QEvent::MouseMove, end("R5", "a") + QPointF(3, 3), Qt::NoButton, Qt::LeftButton);
-    sheet.grab().save("joining-end.png");
+    sheet.grab().save(file("joining-end.png"));
     send(QEvent::MouseButtonRelease, end("J1", "g") - QPointF(100, -60), Qt::LeftButton, Qt::NoButton);
-    sheet.grab().save("stub.png");
+    sheet.grab().save(file("stub.png"));
     sheet.arm_kind("lamp");
     send(QEvent::MouseMove, QPointF(160, 500), Qt::NoButton, Qt::NoButton);
-    sheet.grab().save("placing.png");
+    sheet.grab().save(file("placing.png"));
     sheet.arm_kind({});
     QKeyEvent four(QEvent::KeyPress, Qt::Key_4, {}, "4");
     QApplication::sendEvent(&sheet, &four);
     sheet.findChild<QLineEdit*>("inline_edit")->setText("4k7");
-    sheet.grab().save("typing.png");
+    sheet.grab().save(file("typing.png"));
 }
 
 TEST_CASE("time of a frame while a part is dragged in a design of 60 parts", "[.bench]") {
