@@ -37,7 +37,8 @@ struct LimitedNewton::State {
     Vector typical, f, right_side, step, row_scale, column_scale, row_size;
     Matrix jacobian, scaled;
     Eigen::PartialPivLU<Matrix> lu;
-    int iterations = 0, worst_row = 0, not_finite_part = -1;
+    int iterations = 0, worst_row = 0;
+    const Element* not_finite = nullptr;
     double residual = 0, last_step = 0;
     std::vector<int> free_unknowns;
 
@@ -69,7 +70,7 @@ void LimitedNewton::State::prepare(const Circuit& c) {
     u_try.resize(widest_u), out_try.resize(widest_out), predicted.resize(widest_out);
     typical.resize(c.size()), row_scale.resize(c.size()), column_scale.resize(c.size()), row_size.resize(c.size());
     for (int k = 0; k < c.size(); ++k) typical[k] = c.unknowns[k].typical;
-    iterations = 0, not_finite_part = -1;
+    iterations = 0, not_finite = nullptr;
 }
 
 /// Values and slopes of all laws at ũ; false when one is not finite.
@@ -83,7 +84,7 @@ bool LimitedNewton::State::linearise_elements() {
         };
         if (finite(&out[slot.out], slot.outputs) && finite(&slopes[slot.slopes], slot.outputs * slot.controls))
             continue;
-        not_finite_part = circuit->elements[e].part;
+        not_finite = &circuit->elements[e];
         return false;
     }
     return true;
@@ -136,10 +137,6 @@ bool LimitedNewton::State::factorise() {
 
 void LimitedNewton::State::find_free_unknowns() {
     free_unknowns.clear();
-    if (!scaled.allFinite()) {
-        free_unknowns.push_back(0);
-        return;
-    }
     Eigen::FullPivLU<Matrix> full(scaled);
     full.setThreshold(4 * epsilon * static_cast<double>(circuit->size()));
     if (full.isInvertible()) return;
@@ -240,7 +237,7 @@ void LimitedNewton::prepare(const Circuit& circuit) { state_->prepare(circuit); 
 int LimitedNewton::iterations() const { return state_->iterations; }
 double LimitedNewton::last_step() const { return state_->last_step; }
 int LimitedNewton::worst_row() const { return state_->worst_row; }
-int LimitedNewton::not_finite_part() const { return state_->not_finite_part; }
+const Element* LimitedNewton::not_finite() const { return state_->not_finite; }
 std::vector<int> LimitedNewton::free_unknowns() const { return state_->free_unknowns; }
 
 NewtonEnd LimitedNewton::solve(Vector& x, const Modification& modification, int max_iterations,
@@ -249,6 +246,7 @@ NewtonEnd LimitedNewton::solve(Vector& x, const Modification& modification, int 
     for (std::size_t e = 0; e < s.slots.size(); ++e)
         for (int c = 0; c < s.slots[e].controls; ++c)
             s.u[s.slots[e].u + c] = value_at(s.circuit->elements[e].controls[c], x);
+    s.not_finite = nullptr;
     bool followed = true;
     double share = 1;
     s.last_step = std::numeric_limits<double>::infinity();
@@ -257,6 +255,7 @@ NewtonEnd LimitedNewton::solve(Vector& x, const Modification& modification, int 
         if (!s.linearise_elements()) return NewtonEnd::not_finite;
         ++s.iterations;
         s.form_equations(x, modification);
+        if (!s.f.allFinite() || !s.jacobian.allFinite()) return NewtonEnd::not_finite;
         if (!s.factorise()) return NewtonEnd::singular;
         s.measure_residual(x);
         s.right_side = -s.f.cwiseProduct(s.row_scale);

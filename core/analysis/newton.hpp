@@ -36,8 +36,8 @@ class LimitedNewton {
     double last_step() const;
     /// Row with the largest |f| at the last linearisation against the size of its terms.
     int worst_row() const;
-    /// Part whose law gave a value that is not finite at the last stop; −1: none.
-    int not_finite_part() const;
+    /// Element whose law gave a value that is not finite in the last solve; null: none.
+    const Element* not_finite() const;
     /// Unknowns that the last, singular Jacobian leaves free, the freest first.
     std::vector<int> free_unknowns() const;
 

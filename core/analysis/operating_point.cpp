@@ -142,10 +142,16 @@ NewtonEnd OperatingPointSolver::Workspace::follow_pseudo_transient(const Circuit
 
 Fault OperatingPointSolver::Workspace::not_converged_fault(const Circuit& circuit) const {
     const Unknown& worst = circuit.unknowns[newton.worst_row()];
+    const std::string tried = fmt::format(" Tried Newton, source stepping, conductance stepping and pseudo-transient "
+                                          "continuation, {} iterations in all.",
+                                          newton.iterations());
+    if (const Element* element = newton.not_finite())
+        return {FaultKind::not_converged, element->ref,
+                fmt::format("No DC operating point found: the equations of {} gave a value that is not finite.{}",
+                            element->ref, tried),
+                fmt::format("Look at the values of {}.", element->ref)};
     return {FaultKind::not_converged, where_of(worst),
-            fmt::format("No DC operating point found: {} stays out of balance. Tried Newton, source stepping, "
-                        "conductance stepping and pseudo-transient, {} iterations in all.",
-                        name_of_equation(worst), newton.iterations()),
+            fmt::format("No DC operating point found: {} stays out of balance.{}", name_of_equation(worst), tried),
             fmt::format("Look at the values around {}.", where_of(worst))};
 }
 

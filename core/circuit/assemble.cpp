@@ -65,7 +65,7 @@ class Collector final : public PartStamp {
         for (auto* list : {&controls, &injections})
             for (Combination& combination : *list)
                 std::erase_if(combination, [](const Weighted& w) { return w.index < 0; });
-        elements_.push_back({part_, std::move(law), std::move(controls), std::move(injections)});
+        elements_.push_back({part_, std::move(law), std::move(controls), std::move(injections), seen_->ref});
     }
     void tie(Tie how, int a, int b) override { ties.push_back({how, a, b, part_}); }
 
@@ -107,8 +107,12 @@ void settle_opened_side(Circuit& circuit, Collector& collector, const Part& part
                 for (Weighted& term : combination) settle(term.index);
 }
 
+/// G and C are dense: two of this size take 0.6 GB, and LU as much again.
+constexpr int most_unknowns = 6000;
+
 /// @param cut_part, cut_terminal  −1: closed.
-Assembled stamp_all(const Design& design, int cut_part, int cut_terminal) {
+/// @error limit_exceeded
+Result<Assembled> stamp_all(const Design& design, int cut_part, int cut_terminal) {
     Assembled result;
     Circuit& circuit = result.circuit;
     const NetTable nets(design);
@@ -130,6 +134,14 @@ Assembled stamp_all(const Design& design, int cut_part, int cut_terminal) {
         settle_opened_side(circuit, collector, design.parts[cut_part],
                            nets.of(*design.parts[cut_part].terminals[cut_terminal].net));
     const int n = circuit.size();
+    if (n > most_unknowns)
+        return Fault{FaultKind::limit_exceeded, "parts",
+                     "The circuit has " + std::to_string(n) + " unknowns; at most " + std::to_string(most_unknowns) +
+                         " can be solved.",
+                     "Use fewer parts or simpler models."};
+    if (n == 0)
+        return Fault{FaultKind::floating_net, "net gnd", "Every terminal is on gnd, so there is no voltage to find.",
+                     "Join the parts to other nets."};
     circuit.G = Matrix::Zero(n, n);
     circuit.C = Matrix::Zero(n, n);
     circuit.s = Vector::Zero(n);
@@ -151,28 +163,28 @@ int Circuit::net(std::string_view name) const {
 
 Result<Circuit> assemble(const Design& design) {
     if (Faults open = unconnected_terminals(design); !open.empty()) return open;
-    Assembled assembled = stamp_all(design, -1, -1);
-    if (Faults faults = topology_faults(design, assembled.circuit, assembled.ties); !faults.empty()) return faults;
-    return std::move(assembled.circuit);
+    Result<Assembled> assembled = stamp_all(design, -1, -1);
+    if (!assembled) return assembled.faults();
+    if (Faults faults = topology_faults(design, assembled->circuit, assembled->ties); !faults.empty()) return faults;
+    return std::move(assembled->circuit);
 }
 
 Result<Circuit> assemble_opened(const Design& design, const Cut& cut) {
+    if (Faults open = unconnected_terminals(design); !open.empty()) return open;
     for (int k = 0; k < static_cast<int>(design.parts.size()); ++k) {
         const Part& part = design.parts[k];
         if (part.ref != cut.part) continue;
         const int terminal = find_part_kind(part.kind)->terminal(cut.terminal);
         if (terminal < 0) break;
-        const auto& net = part.terminals[terminal].net;
+        const std::string& net = *part.terminals[terminal].net;
         const std::string where = cut.part + "." + cut.terminal;
-        if (!net)
-            return Fault{FaultKind::unconnected_terminal, where,
-                         "The cut lies at " + where + ", which is not connected.",
-                         "Join that terminal, or cut elsewhere."};
-        if (*net == ground_net)
+        if (net == ground_net)
             return Fault{FaultKind::no_loop_gain, where,
                          "The cut lies at " + where + ", which is on gnd: no signal passes there.",
                          "Cut at a terminal that carries the signal."};
-        return stamp_all(design, k, terminal).circuit;
+        Result<Assembled> assembled = stamp_all(design, k, terminal);
+        if (!assembled) return assembled.faults();
+        return std::move(assembled->circuit);
     }
     return Fault{FaultKind::missing_reference, "cut",
                  "The cut names " + cut.part + " " + cut.terminal + ", which is not there.",

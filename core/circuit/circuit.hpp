@@ -27,6 +27,7 @@ struct Element {
     LawPtr law;
     std::vector<Combination> controls;
     std::vector<Combination> injections;
+    std::string ref = {}; ///< of the part, for messages
 };
 
 struct Circuit {

@@ -1,6 +1,10 @@
 /// f(x), q(x) and their derivatives, and the linearised circuit.
-#include "core/circuit/circuit.hpp"
+#include "core/circuit/element.hpp"
+#include <algorithm>
 #include <array>
+#include <bit>
+#include <cassert>
+#include <cstdint>
 
 namespace sinewright {
 
@@ -9,41 +13,41 @@ namespace {
 /// Room for one sample of any law: the largest kinds have three controls and two outputs.
 constexpr int most_controls = 4, most_outputs = 4;
 
+/// A NaN no arithmetic produces: in debug builds an entry that still holds it was never written.
+constexpr std::uint64_t unwritten_bits = 0x7ff8'dead'beef'0001;
+
+void mark_unwritten([[maybe_unused]] double* values, [[maybe_unused]] int count) {
+#ifndef NDEBUG
+    std::fill_n(values, count, std::bit_cast<double>(unwritten_bits));
+#endif
+}
+void assert_written([[maybe_unused]] const double* values, [[maybe_unused]] int count) {
+    assert(std::none_of(values, values + count,
+                        [](double v) { return std::bit_cast<std::uint64_t>(v) == unwritten_bits; }) &&
+           "a law left an entry unwritten");
+}
+
 struct OneSample {
-    std::array<double, most_controls> u{};
+    std::array<double, most_controls> u;
     std::array<double, most_outputs> i, q;
     std::array<double, most_outputs * most_controls> di, dq;
 
     void evaluate(const Element& element, const Vector& x, bool derivatives) {
-        const int controls = element.law->controls();
-        assert(controls <= most_controls && element.law->outputs() <= most_outputs);
-#ifndef NDEBUG
-        i.fill(std::numeric_limits<double>::quiet_NaN()); // an entry not written shows
-        di.fill(std::numeric_limits<double>::quiet_NaN());
-#endif
-        q.fill(0), dq.fill(0);
-        for (int c = 0; c < controls; ++c) {
-            u[c] = 0;
-            for (const auto& [index, weight] : element.controls[c]) u[c] += weight * x[index];
-        }
+        const Law& law = *element.law;
+        const int controls = law.controls(), outputs = law.outputs(), slopes = outputs * controls;
+        assert(controls <= most_controls && outputs <= most_outputs);
+        mark_unwritten(i.data(), outputs), mark_unwritten(di.data(), slopes);
+        mark_unwritten(q.data(), outputs), mark_unwritten(dq.data(), slopes);
+        for (int c = 0; c < controls; ++c) u[c] = value_at(element.controls[c], x);
         LawSamples samples{1, u.data(), i.data(), derivatives ? di.data() : nullptr, nullptr, nullptr};
-        if (element.law->stores_charge()) samples.q = q.data(), samples.dq = derivatives ? dq.data() : nullptr;
-        element.law->evaluate(samples);
+        if (law.stores_charge()) samples.q = q.data(), samples.dq = derivatives ? dq.data() : nullptr;
+        law.evaluate(samples);
+        assert_written(i.data(), outputs);
+        if (derivatives) assert_written(di.data(), slopes);
+        if (samples.q) assert_written(q.data(), outputs);
+        if (samples.dq) assert_written(dq.data(), slopes);
     }
 };
-
-void add_jacobian(const Element& element, const std::array<double, most_outputs * most_controls>& slope,
-                  Matrix& jacobian) {
-    const int controls = element.law->controls(), outputs = element.law->outputs();
-    for (int o = 0; o < outputs; ++o)
-        for (int c = 0; c < controls; ++c) {
-            const double d = slope[o * controls + c];
-            if (d == 0) continue;
-            for (const auto& [row, weight_out] : element.injections[o])
-                for (const auto& [column, weight_in] : element.controls[c])
-                    jacobian(row, column) += weight_out * d * weight_in;
-        }
-}
 
 } // namespace
 
@@ -54,9 +58,8 @@ void evaluate_static(const Circuit& circuit, const Vector& x, Vector& f, Matrix*
     OneSample sample;
     for (const Element& element : circuit.elements) {
         sample.evaluate(element, x, jacobian != nullptr);
-        for (int o = 0; o < element.law->outputs(); ++o)
-            for (const auto& [row, weight] : element.injections[o]) f[row] += weight * sample.i[o];
-        if (jacobian) add_jacobian(element, sample.di, *jacobian);
+        add_outputs(element, sample.i.data(), f);
+        if (jacobian) add_slopes(element, sample.di.data(), *jacobian);
     }
 }
 
@@ -67,9 +70,8 @@ void evaluate_charge(const Circuit& circuit, const Vector& x, Vector& q, Matrix*
     for (const Element& element : circuit.elements) {
         if (!element.law->stores_charge()) continue;
         sample.evaluate(element, x, jacobian != nullptr);
-        for (int o = 0; o < element.law->outputs(); ++o)
-            for (const auto& [row, weight] : element.injections[o]) q[row] += weight * sample.q[o];
-        if (jacobian) add_jacobian(element, sample.dq, *jacobian);
+        add_outputs(element, sample.q.data(), q);
+        if (jacobian) add_slopes(element, sample.dq.data(), *jacobian);
     }
 }
 
@@ -78,8 +80,8 @@ Pencil linearise(const Circuit& circuit, const Vector& x) {
     OneSample sample;
     for (const Element& element : circuit.elements) {
         sample.evaluate(element, x, true);
-        add_jacobian(element, sample.di, pencil.G);
-        if (element.law->stores_charge()) add_jacobian(element, sample.dq, pencil.C);
+        add_slopes(element, sample.di.data(), pencil.G);
+        if (element.law->stores_charge()) add_slopes(element, sample.dq.data(), pencil.C);
     }
     return pencil;
 }

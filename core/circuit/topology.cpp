@@ -1,6 +1,6 @@
 #include "core/circuit/topology.hpp"
+#include "core/circuit/structural_rank.hpp"
 #include <algorithm>
-#include <functional>
 #include <numeric>
 
 namespace sinewright {
@@ -83,23 +83,24 @@ Faults floating_nets(const Design& design, const Circuit& circuit, const std::ve
     return faults;
 }
 
-/// Parts of a chain of ideal sources from a to b, or empty.
-std::vector<int> source_chain(const std::vector<TieEdge>& sources, int a, int b) {
-    std::vector<std::pair<int, std::vector<int>>> reached{{a, {}}};
-    for (std::size_t k = 0; k < reached.size(); ++k) {
-        if (reached[k].first == b) return reached[k].second;
-        for (const TieEdge& edge : sources)
-            for (const auto& [from, to] : {std::pair{edge.a, edge.b}, std::pair{edge.b, edge.a}}) {
-                if (from != reached[k].first) continue;
-                const bool seen =
-                    std::any_of(reached.begin(), reached.end(), [&](const auto& r) { return r.first == to; });
-                if (seen) continue;
-                auto parts = reached[k].second;
-                parts.push_back(edge.part);
-                reached.emplace_back(to, std::move(parts));
-            }
-    }
-    return {};
+/// Parts of the chain from a to b through a forest of ideal sources (breadth first).
+std::vector<int> source_chain(const std::vector<TieEdge>& forest, int unknowns, int a, int b) {
+    const auto node = [](int unknown) { return unknown + 1; }; // gnd is −1
+    std::vector<std::vector<int>> edges_at(unknowns + 1);
+    for (int e = 0; e < static_cast<int>(forest.size()); ++e)
+        for (int end : {forest[e].a, forest[e].b}) edges_at[node(end)].push_back(e);
+    std::vector<int> came_by(unknowns + 1, -1), queue{a};
+    const auto far_end = [&](int e, int from) { return forest[e].a == from ? forest[e].b : forest[e].a; };
+    for (std::size_t head = 0; head < queue.size() && queue[head] != b; ++head)
+        for (int e : edges_at[node(queue[head])]) {
+            const int next = far_end(e, queue[head]);
+            if (next == a || came_by[node(next)] >= 0) continue;
+            came_by[node(next)] = e;
+            queue.push_back(next);
+        }
+    std::vector<int> parts;
+    for (int at = b; at != a; at = far_end(came_by[node(at)], at)) parts.push_back(forest[came_by[node(at)]].part);
+    return parts;
 }
 
 std::string name_of_source(const Part& part) {
@@ -142,6 +143,9 @@ Fault source_loop(const Design& design, const TieEdge& closing, const std::vecto
             "Put a resistor into the loop, or remove one of them."};
 }
 
+/// Enough to see what is wrong; a hostile file can hold a million.
+constexpr std::size_t most_loops = 20;
+
 Faults source_loops(const Design& design, const Circuit& circuit, const std::vector<TieEdge>& ties) {
     Pieces pieces(circuit.size());
     std::vector<TieEdge> sources;
@@ -151,55 +155,53 @@ Faults source_loops(const Design& design, const Circuit& circuit, const std::vec
         if (pieces.join(tie.a, tie.b))
             sources.push_back(tie);
         else
-            faults.push_back(source_loop(design, tie, source_chain(sources, tie.a, tie.b)));
+            faults.push_back(source_loop(design, tie, source_chain(sources, circuit.size(), tie.a, tie.b)));
+        if (faults.size() == most_loops) break;
     }
     return faults;
 }
 
-/// Which unknowns each equation mentions at DC.
-std::vector<std::vector<int>> pattern_at_dc(const Circuit& circuit) {
-    std::vector<std::vector<int>> rows(circuit.size());
-    for (int row = 0; row < circuit.size(); ++row)
-        for (int column = 0; column < circuit.size(); ++column)
-            if (circuit.G(row, column) != 0) rows[row].push_back(column);
-    for (const Element& element : circuit.elements)
-        for (const Combination& injection : element.injections)
-            for (const auto& [row, weight] : injection)
-                for (const Combination& control : element.controls)
-                    for (const auto& [column, weight_in] : control) rows[row].push_back(column);
-    return rows;
-}
-
-/// An unknown no equation can be spared for (maximum matching of equations and unknowns); −1: none.
-int unmatched_unknown(const Circuit& circuit) {
-    const auto rows = pattern_at_dc(circuit);
-    std::vector<int> row_of(circuit.size(), -1), visited(circuit.size(), -1);
-    const std::function<bool(int, int)> place = [&](int row, int round) {
-        for (const int column : rows[row]) {
-            if (visited[column] == round) continue;
-            visited[column] = round;
-            if (row_of[column] < 0 || place(row_of[column], round)) {
-                row_of[column] = row;
-                return true;
-            }
-        }
-        return false;
-    };
-    for (int row = 0; row < circuit.size(); ++row) place(row, row);
-    const auto free = std::find(row_of.begin(), row_of.end(), -1);
-    return free == row_of.end() ? -1 : static_cast<int>(free - row_of.begin());
+/// The unknown no equation is left for and the parts whose equations say too much already. Prefers a net: it can be
+/// seen on the sheet.
+Faults undetermined(const Circuit& circuit) {
+    const StructuralGap gap = find_structural_gap(direct_current_pattern(circuit));
+    if (gap.undetermined.empty()) return {};
+    const auto is_net = [&](int k) { return circuit.unknowns[k].kind == UnknownKind::net_voltage; };
+    const auto net = std::find_if(gap.undetermined.begin(), gap.undetermined.end(), is_net);
+    const Unknown& loose = circuit.unknowns[net == gap.undetermined.end() ? gap.undetermined.front() : *net];
+    std::vector<std::string> owners;
+    for (int row : gap.overdetermined)
+        if (const std::string& ref = circuit.unknowns[row].part; !ref.empty()) owners.push_back(ref);
+    std::sort(owners.begin(), owners.end());
+    owners.erase(std::unique(owners.begin(), owners.end()), owners.end());
+    const bool one = owners.size() == 1;
+    std::string sentence = "No equation determines " + loose.name + " at DC";
+    if (!owners.empty())
+        sentence += ": what " + list_of(owners) + (one ? " demands" : " demand") + " is settled elsewhere already";
+    return {{FaultKind::singular_pencil, loose.part.empty() ? loose.name : loose.part, sentence + ".",
+             owners.empty() ? "Check what drives it: an op-amp may lack feedback to its inverting input."
+                            : "Give " + list_of(owners) + " feedback that passes direct current."}};
 }
 
 } // namespace
 
 Faults unconnected_terminals(const Design& design) {
     Faults faults;
+    if (design.parts.empty())
+        faults.push_back({FaultKind::missing_value, "parts", "There are no parts yet.", "Place some and join them."});
     for (const Part& part : design.parts) {
         const PartKind* kind = find_part_kind(part.kind);
-        for (std::size_t k = 0; k < part.terminals.size(); ++k) {
-            if (part.terminals[k].net) continue;
-            faults.push_back({FaultKind::unconnected_terminal, part.ref + "." + part.terminals[k].terminal,
-                              part.ref + " is not connected at its " + std::string(kind->terminals[k].meaning) + ".",
+        if (!kind) {
+            faults.push_back({FaultKind::unknown_key, part.ref + ".kind",
+                              part.ref + ": no part kind is called " + part.kind + ".", "Choose one from the shelf."});
+            continue;
+        }
+        for (std::size_t k = 0; k < kind->terminals.size(); ++k) {
+            const TerminalInfo& terminal = kind->terminals[k];
+            if (k < part.terminals.size() && part.terminals[k].terminal == terminal.name && part.terminals[k].net)
+                continue;
+            faults.push_back({FaultKind::unconnected_terminal, part.ref + "." + std::string(terminal.name),
+                              part.ref + " is not connected at its " + std::string(terminal.meaning) + ".",
                               "Join it, ground it, or remove " + part.ref + "."});
         }
     }
@@ -209,14 +211,7 @@ Faults unconnected_terminals(const Design& design) {
 Faults topology_faults(const Design& design, const Circuit& circuit, const std::vector<TieEdge>& ties) {
     Faults faults = source_loops(design, circuit, ties);
     for (Fault& fault : floating_nets(design, circuit, ties)) faults.push_back(std::move(fault));
-    if (!faults.empty()) return faults;
-    if (const int k = unmatched_unknown(circuit); k >= 0) {
-        const Unknown& unknown = circuit.unknowns[k];
-        faults.push_back({FaultKind::singular_pencil, unknown.part.empty() ? unknown.name : unknown.part,
-                          "No equation determines " + unknown.name + " at DC.",
-                          "Check what drives it: an op-amp may lack feedback to its inverting input."});
-    }
-    return faults;
+    return faults.empty() ? undetermined(circuit) : faults;
 }
 
 } // namespace sinewright

@@ -209,3 +209,50 @@ TEST_CASE("several faults are told at once", "[topology][errors]") {
     REQUIRE_FALSE(assembled);
     CHECK(assembled.faults().size() == 2);
 }
+
+TEST_CASE("a sheet without parts, or with all of them on gnd, is told so", "[topology][errors]") {
+    CHECK(Drawing().fault().sentence == "There are no parts yet.");
+    Drawing d;
+    d.resistor("R1", 1e3, "gnd", "gnd");
+    CHECK(d.fault().kind == FaultKind::floating_net);
+    CHECK(says(d.fault(), "on gnd"));
+}
+
+TEST_CASE("a part of an unknown kind or short of a terminal is a fault, in the opened circuit too",
+          "[topology][errors]") {
+    Drawing d = bridge_loop();
+    d.design().parts[0].kind = "flux_gate";
+    CHECK(d.fault().kind == FaultKind::unknown_key);
+    CHECK(says(d.fault(), "flux_gate"));
+    CHECK_FALSE(assemble_opened(d.design(), {"U1", "plus"}));
+    Drawing e = bridge_loop();
+    e.design().parts[1].terminals.pop_back();
+    CHECK(e.fault().kind == FaultKind::unconnected_terminal);
+    CHECK(e.fault().where == "C1.b");
+    CHECK_FALSE(assemble_opened(e.design(), {"U1", "plus"}));
+}
+
+TEST_CASE("a thousand contradictory supplies are answered at once", "[topology][large]") {
+    Drawing d;
+    for (int k = 0; k < 1000; ++k) {
+        const std::string from = k == 0 ? "gnd" : "n" + std::to_string(k - 1), to = "n" + std::to_string(k);
+        d.supply("VA" + std::to_string(k), 1, to.c_str(), from.c_str());
+        d.supply("VB" + std::to_string(k), 2, to.c_str(), from.c_str());
+    }
+    const auto assembled = assemble(d.design());
+    REQUIRE_FALSE(assembled);
+    CHECK(assembled.fault().sentence == "VA0 and VB0 force different voltages on the same net.");
+    CHECK(assembled.faults().size() < 50);
+}
+
+TEST_CASE("more unknowns than can be solved are refused with the limit", "[topology][large]") {
+    Drawing d;
+    d.resistor("R0", 1e3, "in", "gnd");
+    for (int k = 0; k < 1999; ++k) {
+        const std::string out = "o" + std::to_string(k);
+        d.add("opamp", "U" + std::to_string(k), {{"model", "macro"}, {"gbw", 1e6}, {"second_pole", 1e7}},
+              {"in", out.c_str(), out.c_str()});
+    }
+    CHECK(d.fault().kind == FaultKind::limit_exceeded);
+    CHECK(says(d.fault(), "at most 6000"));
+}
