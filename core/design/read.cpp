@@ -54,7 +54,10 @@ class Reader {
     Design read(const Json& top) {
         header(top);
         if (!faults.empty()) return {};
-        for (const auto& [key, value] : top.items()) top_level(key, value);
+        // Parts first, wherever they stand: they decide the units in which dials are written.
+        if (top.contains("parts")) top_level("parts", top["parts"]);
+        for (const auto& [key, value] : top.items())
+            if (key != "parts") top_level(key, value);
         return std::move(design_);
     }
     Faults faults;

@@ -39,7 +39,11 @@ SheetView::SheetView(Document& document, Analyst& analyst, QWidget* parent)
         zoom_to_fit();
     });
     connect(&document, &Document::selection_changed, this, &SheetView::describe);
-    connect(&analyst, &Analyst::shown, this, [this] { desk_.take_over_findings(); });
+    connect(&analyst, &Analyst::shown, this, [this] {
+        const bool had_cut = desk_.overlay().cut.has_value();
+        desk_.take_over_findings();
+        if (fitted_ && !had_cut && desk_.overlay().cut) zoom_to_fit(); // the chip at the cut wants room too
+    });
     connect(&analyst, &Analyst::became_stale, this, [this] { desk_.take_over_findings(); });
     connect(&analyst, &Analyst::stale_for_long, this, [this] { desk_.take_over_findings(); });
     connect(&ThemeKeeper::instance(), &ThemeKeeper::changed, this, [this] { desk_.take_over(); });
@@ -50,16 +54,48 @@ SheetView::SheetView(Document& document, Analyst& analyst, QWidget* parent)
 SheetView::~SheetView() = default;
 
 void SheetView::zoom_to_fit() {
-    const QRectF extent = desk_.drawing().extent();
-    const QSizeF room(std::max(80.0, width() - 2 * fit_margin_px), std::max(80.0, height() - 2 * fit_margin_px));
-    zoom_ = 1;
-    if (!extent.isEmpty())
-        zoom_ = std::max(smallest_zoom, std::min(room.width() / extent.width(), room.height() / extent.height()));
-    if (zoom_ > natural_from) zoom_ = 1;
-    origin_ = extent.center() - QPointF(width(), height()) / (2 * zoom_);
-    origin_ = {std::round(origin_.x() * zoom_) / zoom_, std::round(origin_.y() * zoom_) / zoom_};
+    const QRectF room = QRectF(rect()).adjusted(fit_margin_px, fit_margin_px, -fit_margin_px, -fit_margin_px);
+    fit_into(room);
+    if (covers_drawing(card_)) {
+        // Beside the card or above it, whichever leaves the drawing larger.
+        const QRectF beside(card_.right() + fit_margin_px / 2, room.top(), room.right() - card_.right(), room.height());
+        const QRectF above(room.left(), room.top(), room.width(), card_.top() - room.top());
+        fit_into(above);
+        const double zoom_above = zoom_;
+        fit_into(beside);
+        if (zoom_above > zoom_) fit_into(above);
+    }
     fitted_ = true;
     update();
+}
+
+void SheetView::fit_into(const QRectF& room) {
+    QRectF extent = desk_.drawing().extent();
+    if (desk_.overlay().cut) extent |= desk_.overlay().cut->chip;
+    zoom_ = 1;
+    if (!extent.isEmpty())
+        zoom_ = std::max(smallest_zoom, std::min(std::max(80.0, room.width()) / extent.width(),
+                                                 std::max(80.0, room.height()) / extent.height()));
+    if (zoom_ > natural_from) zoom_ = 1;
+    origin_ = extent.center() - room.center() / zoom_;
+    origin_ = {std::round(origin_.x() * zoom_) / zoom_, std::round(origin_.y() * zoom_) / zoom_};
+}
+
+bool SheetView::covers_drawing(const QRectF& card) const {
+    if (card.isEmpty()) return false;
+    const QRectF covered(card.topLeft() / zoom_ + origin_, card.size() / zoom_);
+    for (const PartShape& part : desk_.drawing().parts())
+        if (part.reach().intersects(covered)) return true;
+    for (const Join& join : desk_.drawing().joins())
+        for (const QPainterPath& run : join.runs)
+            if (run.intersects(covered)) return true;
+    return false;
+}
+
+void SheetView::keep_clear(const QRect& card) {
+    if (card == card_) return;
+    card_ = card;
+    if (fitted_) zoom_to_fit();
 }
 
 void SheetView::zoom_by(double factor, QPointF about) {

@@ -20,6 +20,8 @@ class SheetView : public QWidget {
     ~SheetView() override;
 
     void zoom_to_fit();
+    /// A card that lies over the sheet: a fitted drawing keeps out from under it.
+    void keep_clear(const QRect& card);
     void zoom_by(double factor, QPointF about); ///< `about` in widget coordinates
     double zoom() const { return zoom_; }
     void set_line_px(double px) { line_px_ = px, update(); } ///< 3 for presentation
@@ -72,6 +74,9 @@ class SheetView : public QWidget {
     bool event(QEvent*) override;
 
   private:
+    void fit_into(const QRectF& room);
+    bool covers_drawing(const QRectF& card) const;
+    QRect card_;
     void begin(GesturePtr gesture);
     void end_gesture(bool abandon);
     bool finish_gesture(QPointF at, Qt::KeyboardModifiers modifiers);

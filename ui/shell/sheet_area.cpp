@@ -34,7 +34,15 @@ SheetArea::SheetArea(Document& document, Analyst& analyst, QWidget* parent)
     connect(sheet_, &SheetView::message, this, &SheetArea::say);
     connect(&document_, &Document::changed, this, &SheetArea::take_over);
     connect(properties_, &Properties::built, this, &SheetArea::keep_clear_of_selection);
+    dials_->installEventFilter(this);
     take_over();
+}
+
+bool SheetArea::eventFilter(QObject* watched, QEvent* event) {
+    const bool moved = event->type() == QEvent::Resize || event->type() == QEvent::Move ||
+                       event->type() == QEvent::Show || event->type() == QEvent::Hide;
+    if (watched == dials_ && moved) sheet_->keep_clear(dials_->isVisible() ? dials_->geometry() : QRect());
+    return QWidget::eventFilter(watched, event);
 }
 
 void SheetArea::take_over() {

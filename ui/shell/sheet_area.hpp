@@ -25,6 +25,7 @@ class SheetArea : public QWidget {
     void say(const QString& note); ///< shown for some seconds at the sheet's foot
 
   protected:
+    bool eventFilter(QObject* watched, QEvent* event) override;
     void resizeEvent(QResizeEvent*) override;
 
   private:
