@@ -40,7 +40,9 @@ PlanePlot::PlanePlot(QWidget* parent) : QCustomPlot(parent) {
     setFocusPolicy(Qt::StrongFocus);
     setMinimumSize(150, 150);
     axisRect()->setupFullAxesBox(true);
-    axisRect()->setMinimumMargins(QMargins(36, 18, 8, 38));
+    // Fixed margins: were they to follow the labels, the scales would lose their equality with every new label.
+    axisRect()->setAutoMargins(QCP::msNone);
+    axisRect()->setMargins(QMargins(42, 18, 8, 38));
     for (QCPAxis* axis : {xAxis, yAxis})
         axis->setTicker(QSharedPointer<PlainTicker>::create()), axis->ticker()->setTickCount(4);
     titles_ << add_title(this, axisRect(), tr("loop gain in the complex plane"), false)

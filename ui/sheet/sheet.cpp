@@ -19,14 +19,15 @@ constexpr int wheel_rest_ms = 800;
 } // namespace
 
 SheetView::SheetView(Document& document, Analyst& analyst, QWidget* parent)
-    : QWidget(parent), desk_(document, analyst), field_(new InlineField(this)) {
+    : QWidget((install_sheet_access(), parent)), // before anything asks for the interface, which is made only once
+      desk_(document, analyst),
+      field_(new InlineField(this)) {
     setObjectName(QStringLiteral("sheet"));
     setAccessibleName(tr("Sheet"));
     setFocusPolicy(Qt::StrongFocus);
     setMouseTracking(true);
     setAcceptDrops(true);
     setMinimumSize(320, 240);
-    install_sheet_access();
     desk_.repaint = [this] { update(); };
     desk_.say = [this](const QString& text) { emit message(text); };
     wheel_rest_.setSingleShot(true);

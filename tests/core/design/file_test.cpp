@@ -153,7 +153,7 @@ TEST_CASE("mutated and random bytes give a design or a sentence, never a crash",
     for (int round = 0; round < 3000; ++round) {
         std::string text = good;
         const int changes = 1 + static_cast<int>(random() % 8);
-        for (int k = 0; k < changes; ++k) {
+        for (int k = 0; k < changes && !text.empty(); ++k) {
             const std::size_t at = random() % text.size();
             switch (random() % 4) {
             case 0:
