@@ -188,7 +188,8 @@ Faults undetermined(const Circuit& circuit) {
 Faults unconnected_terminals(const Design& design) {
     Faults faults;
     if (design.parts.empty())
-        faults.push_back({FaultKind::missing_value, "parts", "There are no parts yet.", "Place some and join them."});
+        faults.push_back(
+            {FaultKind::missing_value, "parts", "The design has no parts.", "Drop an amplifier and a network."});
     for (const Part& part : design.parts) {
         const PartKind* kind = find_part_kind(part.kind);
         if (!kind) {

@@ -211,7 +211,7 @@ TEST_CASE("several faults are told at once", "[topology][errors]") {
 }
 
 TEST_CASE("a sheet without parts, or with all of them on gnd, is told so", "[topology][errors]") {
-    CHECK(Drawing().fault().sentence == "There are no parts yet.");
+    CHECK(Drawing().fault().sentence == "The design has no parts.");
     Drawing d;
     d.resistor("R1", 1e3, "gnd", "gnd");
     CHECK(d.fault().kind == FaultKind::floating_net);
