@@ -130,3 +130,22 @@ TEST_CASE("one solver serves circuits of any size, and a neighbouring solution i
     REQUIRE(recovered);
     CHECK((recovered->x - cold->x).cwiseAbs().maxCoeff() < 1e-12);
 }
+
+TEST_CASE("from a stable state the others are found by deflation", "[operating_point][tricky]") {
+    // v = 3v − v³/2 through a resistor that loads nothing: v = 0 and ±2. Source: the root of the cubic.
+    Drawing d;
+    d.add("limiter", "A1", {{"law", "cubic"}, {"gain", 3}, {"cubic", 0.5}}, {"v", "amp"});
+    d.resistor("R1", 1e3, "amp", "v").capacitor("C1", 1e-7, "v", "gnd");
+    const Circuit circuit = d.circuit();
+    Vector settled = Vector::Zero(circuit.size());
+    settled[circuit.net("v")] = settled[circuit.net("amp")] = 2;
+    const auto stable = OperatingPointSolver().solve_from(circuit, settled);
+    REQUIRE(stable);
+    const auto volts = outputs(circuit, find_other_states(circuit, stable->x), "v");
+    REQUIRE(volts.size() == 2);
+    CHECK(volts[0] == Approx(-2).epsilon(1e-12));
+    CHECK(std::abs(volts[1]) < 1e-12);
+    OperatingPointOptions two;
+    two.max_states = 2;
+    CHECK(find_other_states(circuit, stable->x, two).size() == 1);
+}
